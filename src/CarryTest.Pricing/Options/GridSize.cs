@@ -1,0 +1,16 @@
+namespace CarryTest.Pricing.Options;
+
+/// <summary>How finely prices and time are divided in a backward sweep.</summary>
+/// <param name="SpaceSteps">steps over the part of the price axis where the option is not a straight line; at least 20</param>
+/// <param name="TimeSteps">steps from expiry to valuation; short stretches between ex-dates get a few more; at least 4</param>
+public readonly record struct GridSize(int SpaceSteps, int TimeSteps)
+{
+    /// <summary>For first looks.</summary>
+    public static GridSize Fast { get; } = new(100, 30);
+
+    /// <summary>For books and reports.</summary>
+    public static GridSize Standard { get; } = new(200, 80);
+
+    /// <summary>For checks.</summary>
+    public static GridSize Fine { get; } = new(600, 400);
+}
