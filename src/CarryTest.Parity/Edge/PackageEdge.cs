@@ -61,6 +61,7 @@ public static class PackageEdge
             Borrow = borrow,
             Dividends = dividends,
             PremiumShort = request.PremiumShort,
+            PremiumLongCounted = request.PremiumLongCounted,
             EdgePerShare = edge,
             CostsPerShare = costs / shares,
             BpsPerYear = 10_000 * edge / (terms.Delivered * toDelivery * year),

@@ -66,6 +66,9 @@ public sealed record PackagePlan
     /// <summary>A: early-exercise premium of the short legs, per share.</summary>
     public required double PremiumShort { get; init; }
 
+    /// <summary>h A: what the long legs' right is counted at, per share.</summary>
+    public required double PremiumLongCounted { get; init; }
+
     /// <summary>E: present value on t, per share.</summary>
     public required double EdgePerShare { get; init; }
 
@@ -83,6 +86,21 @@ public sealed record PackagePlan
 
     /// <summary>Z(t,x) on the package's side.</summary>
     public required double DiscountToDelivery { get; init; }
+
+    /// <summary>The same plan with early-exercise premia in its edge.</summary>
+    /// <param name="premiumShort">A of the short legs, per share</param>
+    /// <param name="premiumLongCounted">what the long legs' right is counted at, per share</param>
+    public PackagePlan With(double premiumShort, double premiumLongCounted)
+    {
+        double edge = EdgePerShare + PremiumShort - PremiumLongCounted - premiumShort + premiumLongCounted;
+        return this with
+        {
+            PremiumShort = premiumShort,
+            PremiumLongCounted = premiumLongCounted,
+            EdgePerShare = edge,
+            BpsPerYear = 10_000 * edge / (Terms.Delivered * DiscountToDelivery * Dates.FundedDays / 360.0),
+        };
+    }
 
     /// <summary>Shares of all units.</summary>
     public long Shares => (long)Units * Terms.Root.Multiplier;

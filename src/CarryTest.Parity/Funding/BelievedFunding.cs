@@ -7,7 +7,7 @@ namespace CarryTest.Parity.Funding;
 /// <summary>
 /// What one financing assumption believes on one day about the nights to come. `flat`: one rate. `overnight`: the rate known today, every night.
 /// `curve`: the forwards of log-linear discount factors through the pillars Z(n) = 1 / (1 + R n/360), the last forward beyond the last pillar.
-/// Not safe for use by several threads at once.
+/// Grows as it is asked: not safe for several threads beyond the day up to which it was formed.
 /// </summary>
 public sealed class BelievedFunding : IFunding
 {
@@ -74,6 +74,14 @@ public sealed class BelievedFunding : IFunding
     /// <inheritdoc/>
     public int DaysOfYear { get; }
 
+    /// <summary>Forms the belief up to a day at once; up to there it may be read by several threads.</summary>
+    public BelievedFunding Until(DateOnly day)
+    {
+        _ = Index(day);
+        Extend(_nights.Count);
+        return this;
+    }
+
     /// <inheritdoc/>
     public double Discount(DateOnly from, DateOnly to, Side side)
     {
@@ -86,7 +94,11 @@ public sealed class BelievedFunding : IFunding
     public double NightRate(DateOnly night, Side side)
     {
         int i = Index(night);
-        Extend(i + 1);
+        if (i >= _rates.Count)
+        {
+            Extend(i + 1);
+        }
+
         return _rates[i] + (side == Side.Debit ? _debitSpread : -_creditSpread);
     }
 

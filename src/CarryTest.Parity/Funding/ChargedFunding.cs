@@ -36,6 +36,6 @@ public sealed class ChargedFunding(FundingAssumption assumption, ReferenceTables
         FundingKind.Flat => assumption.Rate,
         FundingKind.Overnight => tables.OvernightRate(night) ?? throw new InputException(
             $"reference table `rates`: the night from {night:yyyy-MM-dd} has no overnight rate (days = 1) dated on or before it. Add one, or write `kind = \"flat\"` with a rate under `funding.charged`."),
-        _ => throw new ArgumentOutOfRangeException(nameof(assumption), assumption.Kind, "not a source of charged rates"),
+        _ => throw new InvalidOperationException($"{assumption.Kind} is not a source of charged rates"),
     };
 }

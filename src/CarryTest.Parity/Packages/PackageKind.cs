@@ -34,6 +34,25 @@ public sealed record PackageKind(Kind Kind, ImmutableArray<Leg> Legs, Side Fundi
     /// <summary>Whether a leg is stock.</summary>
     public bool HasStock => Strikes == 1;
 
+    /// <summary>The leg with the other right at the same strike; -1 for stock.</summary>
+    public int TwinOf(int leg)
+    {
+        if (Legs[leg].Of == LegOf.Stock)
+        {
+            return -1;
+        }
+
+        for (int i = 0; i < Legs.Length; i++)
+        {
+            if (i != leg && Legs[i].Of != LegOf.Stock && Legs[i].StrikeSlot == Legs[leg].StrikeSlot)
+            {
+                return i;
+            }
+        }
+
+        return -1;
+    }
+
     /// <summary>What delivery at expiry pays per share, signed: + received. The strike for a conversion, less the strike for a reversal, the width for a long box, less the width for a short one.</summary>
     /// <param name="low">the lower or only strike per share, as it will stand at expiry</param>
     /// <param name="high">the higher strike per share; ignored for one strike</param>

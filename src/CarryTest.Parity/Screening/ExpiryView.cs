@@ -1,0 +1,111 @@
+using System.Collections.Immutable;
+using CarryTest.Market.Calendars;
+using CarryTest.Market.Contracts;
+using CarryTest.Market.Quotes;
+using CarryTest.Market.Reference;
+using CarryTest.Parity.Dividends;
+using CarryTest.Parity.Edge;
+using CarryTest.Parity.Funding;
+using CarryTest.Parity.Packages;
+
+namespace CarryTest.Parity.Screening;
+
+/// <summary>One expiry of one chain as one variant sees it at one snapshot: dates, discount factors, dividends, and the tests that all its strikes share.</summary>
+internal sealed class ExpiryView
+{
+    private readonly ParityRules _rules;
+
+    public ExpiryView(ParityRules rules, MarketDay day, int snapshot, Chain chain, ExpirySlice slice, BelievedFunding believed, Func<bool> stockAgrees)
+    {
+        _rules = rules;
+        Chain = chain;
+        Slice = slice;
+        Cycle = day.Cycle;
+        Believed = believed;
+        Benchmark = day.Benchmark(snapshot);
+        Known = day.KnownAt(snapshot);
+        Dates = day.Dates(chain.Root, slice.Expiry);
+        DateOnly horizon = Dates.Expiry.AddDays(rules.Entry.ExDateMarginDays);
+        AllDividends = chain.Underlying.Kind == UnderlyingKind.Index ? [] : ExpectedDividends.Of(Known, chain.Underlying, rules.Dividends, horizon);
+        Dividends = [.. AllDividends.Where(d => d.ExOn <= Dates.Expiry)];
+        BorrowFee = Known.Borrow(chain.Underlying.Symbol)?.Fee ?? 0;
+        StockAgrees = stockAgrees;
+    }
+
+    public Chain Chain { get; }
+
+    public ExpirySlice Slice { get; }
+
+    public BelievedFunding Believed { get; }
+
+    public BelievedFunding Benchmark { get; }
+
+    public Knowledge Known { get; }
+
+    public ExpiryTerms Dates { get; }
+
+    /// <summary>Ex-dates after today, up to the margin beyond expiry.</summary>
+    public ImmutableArray<ExpectedDividend> AllDividends { get; }
+
+    /// <summary>Ex-dates after today and not after expiry.</summary>
+    public ImmutableArray<ExpectedDividend> Dividends { get; }
+
+    public double BorrowFee { get; }
+
+    /// <summary>Whether stock and chain agree; looked at only where stock is traded.</summary>
+    public Func<bool> StockAgrees { get; }
+
+    /// <summary>Settlement cycles.</summary>
+    public SettlementCycle Cycle { get; }
+
+    /// <summary>What premia depend on.</summary>
+    public PremiumSetting Premium => new(Chain, Slice.Expiry, Dates, Dividends, Benchmark);
+
+    /// <summary>The first test that fails for every strike of a kind, the stock's agreement apart; <see cref="LegTests.Passed"/> where none does.</summary>
+    public Stage First(Kind kind)
+    {
+        bool stock = PackageKinds.Of(kind).HasStock;
+        if (!_rules.Packages.Kinds.Contains(kind) || Chain.Root.Adjusted || Dates.LastTraded <= Dates.TradedOn
+            || (stock && (Chain.Underlying.Kind == UnderlyingKind.Index || Chain.Root.CashSettled))
+            || (Chain.Root.CashSettled && Chain.Root.Exercise == ExerciseStyle.American))
+        {
+            return Stage.Tradeable;
+        }
+
+        if (!_rules.Packages.DaysToExpiry.Holds(Dates.DaysToExpiry))
+        {
+            return Stage.Days;
+        }
+
+        return Blocked() ? Stage.Blocked
+            : NearExDate() ? Stage.ExDateMargin
+            : stock && Undeclared() > _rules.Entry.MaxUndeclaredDividend ? Stage.Undeclared
+            : LegTests.Passed;
+    }
+
+    private bool Blocked() =>
+        _rules.Packages.Block.Contains(Chain.Underlying.Symbol)
+        || Known.Borrow(Chain.Underlying.Symbol) is { Recalled: true }
+        || Known.CorporateActions(Chain.Underlying.Symbol).Any(a => a.EffectiveOn > Dates.TradedOn);
+
+    private bool NearExDate() =>
+        AllDividends.Any(d => !d.Declared && Math.Abs(d.ExOn.DayNumber - Dates.Expiry.DayNumber) <= _rules.Entry.ExDateMarginDays);
+
+    private double Undeclared() => Dividends.Where(d => !d.Declared).Sum(d => d.Amount);
+
+    /// <summary>Z from today to a date, at a side.</summary>
+    public double Z(DateOnly to, Side side) => Believed.Discount(Dates.TradedOn, to, side);
+
+    /// <summary>Present value of the dividends, per share, at a side; received ones less what is withheld.</summary>
+    public double DividendsWorth(Side side)
+    {
+        double kept = side == Side.Debit ? 1 - _rules.Dividends.Withholding : 1;
+        double worth = 0;
+        foreach (ExpectedDividend dividend in Dividends)
+        {
+            worth += kept * dividend.Amount * Z(dividend.CashOn, side);
+        }
+
+        return worth;
+    }
+}
