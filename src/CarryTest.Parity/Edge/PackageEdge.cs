@@ -169,7 +169,7 @@ public static class PackageEdge
         for (DateOnly night = borrow.From; night < borrow.To;)
         {
             DateOnly next = calendar.NextTradingDay(night);
-            worth += borrow.OfNight(next.DayNumber - night.DayNumber) * funding.Discount(tradedOn, next, side);
+            worth += Cash.Round(borrow.OfNight(next.DayNumber - night.DayNumber)).ToDouble() * funding.Discount(tradedOn, next, side);
             night = next;
         }
 
