@@ -29,6 +29,7 @@ internal sealed class BackwardSweep
     private OptionTerms _terms;
     private GridSize _size;
     private double _drift;
+    private ExerciseEdge _edge;
     private double _paid;
     private double _paidAt;
 
@@ -191,12 +192,12 @@ internal sealed class BackwardSweep
 
         Span<Vector128<double>> values = _grid.Values;
         ReadOnlySpan<double> exponentials = _grid.Exponentials;
-        (double level, double slope) = Exercise(left);
+        ExerciseValue exercise = Exercise(left);
         double before = 0;
         for (int i = 0; i < values.Length; i++)
         {
             double held = values[i][0];
-            double exercised = level + (slope * exponentials[i]);
+            double exercised = exercise.At(exponentials[i]);
             double gain = exercised - held;
             if (gain > 0)
             {
@@ -214,12 +215,12 @@ internal sealed class BackwardSweep
         }
     }
 
-    /// <summary>Level and slope of what exercise pays, in u, against exp(x).</summary>
-    private (double Level, double Slope) Exercise(double left)
+    private ExerciseValue Exercise(double left)
     {
-        double level = _terms.Strike * Math.Exp(_terms.Rate * left);
-        double slope = Math.Exp((_terms.Rate - _drift) * left);
-        return _terms.Right == OptionRight.Put ? (level, -slope) : (-level, slope);
+        double sign = _terms.Right == OptionRight.Put ? 1 : -1;
+        double level = sign * _terms.Strike * Math.Exp(_terms.Rate * left);
+        double slope = -sign * Math.Exp((_terms.Rate - _drift) * left);
+        return new ExerciseValue(level, slope, _terms.Rate * level, _terms.Yield * slope);
     }
 
     private void Diffuse(double start, double end)
@@ -233,6 +234,7 @@ internal sealed class BackwardSweep
         double share = (Math.Sqrt(end) - Math.Sqrt(start)) / Math.Sqrt(_terms.Years);
         int steps = Math.Max(FewestSteps, (int)Math.Ceiling(_size.TimeSteps * share));
         double at = start;
+        _edge = default;
         int blocks = 3;
         int per = (steps + blocks - 1) / blocks;
         for (int block = 0; block < blocks; block++)
@@ -240,7 +242,7 @@ internal sealed class BackwardSweep
             double blockStart = block == 0 ? 0 : length * Math.Pow(4, block - blocks);
             double blockEnd = length * Math.Pow(4, block + 1 - blocks);
             double dt = (blockEnd - blockStart) / per;
-            _stepper.Prepare(_grid, _terms.Volatility * _terms.Volatility * dt);
+            _stepper.Prepare(_grid, _terms.Volatility, dt);
             at = start + blockStart;
             int halves = block == 0 ? 4 : 0;
             for (int k = 0; k < halves; k++)
@@ -261,12 +263,11 @@ internal sealed class BackwardSweep
     {
         if (_terms.ExercisedBetweenExDates)
         {
-            (double level, double slope) = Exercise(left);
-            _stepper.Step(_grid, half, Vector128.Create(level, double.NegativeInfinity), Vector128.Create(slope, 0));
+            _edge = _stepper.Step(_grid, half, Exercise(left), _edge);
             return;
         }
 
-        _stepper.Step(_grid, half, Vector128.Create(double.NegativeInfinity), Vector128<double>.Zero);
+        _stepper.Step(_grid, half);
     }
 
     /// <summary>Makes the grid just laid the current one.</summary>
