@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
 namespace CarryTest.Pricing.Options;
@@ -12,8 +14,7 @@ namespace CarryTest.Pricing.Options;
 internal sealed class HeatStepper
 {
     private Vector128<double>[] _eliminated = [];
-    private double[] _inverse = [];
-    private double[] _ratio = [];
+    private Factor[] _factors = [];
 
     private double _years;
     private double _number;
@@ -25,11 +26,10 @@ internal sealed class HeatStepper
     public void Prepare(HeatGrid grid, double volatility, double years)
     {
         int count = grid.Count;
-        if (_inverse.Length < count)
+        if (_factors.Length < count)
         {
             _eliminated = new Vector128<double>[count];
-            _inverse = new double[count];
-            _ratio = new double[count];
+            _factors = new Factor[count];
         }
 
         double step = grid.Step;
@@ -42,15 +42,17 @@ internal sealed class HeatStepper
         _growthAtLast = growth / (Math.Exp(-step) - 1);
         double off = (1.0 / 12) - _number;
         double diagonal = (10.0 / 12) + (2 * _number);
-        double ratio = 0;
+        double share = 0;
         for (int i = count - 2; i >= 1; i--)
         {
-            double inverse = 1 / (diagonal - (off * ratio));
-            ratio = off * inverse;
-            _inverse[i] = inverse;
-            _ratio[i] = ratio;
+            double inverse = 1 / (diagonal + (off * share));
+            share = -off * inverse;
+            _factors[i] = new Factor(inverse, share);
         }
     }
+
+    /// <summary>Of one row of the matrix: the inverse of its pivot, and what a neighbour gives to it.</summary>
+    private readonly record struct Factor(double Inverse, double Share);
 
     /// <summary>
     /// One step without a right to exercise: Crank-Nicolson over the whole length, or implicit Euler over half of it; both have
@@ -98,24 +100,24 @@ internal sealed class HeatStepper
         {
             Vector128<double> side = Vector128.Create(half ? 1.0 / 12 : (1.0 / 12) + _number);
             Vector128<double> middle = Vector128.Create(half ? 10.0 / 12 : (10.0 / 12) - (2 * _number));
-            ReadOnlySpan<double> inverse = _inverse.AsSpan(0, u.Length);
-            ReadOnlySpan<double> ratio = _ratio.AsSpan(0, u.Length);
-            Span<Vector128<double>> z = _eliminated.AsSpan(0, u.Length);
+            ref Vector128<double> row = ref MemoryMarshal.GetReference(u);
+            ref Factor factor = ref MemoryMarshal.GetReference(_factors.AsSpan(0, u.Length));
+            ref Vector128<double> z = ref MemoryMarshal.GetReference(_eliminated.AsSpan(0, u.Length));
             Vector128<double> value = last;
             Vector128<double> above = u[^1];
             Vector128<double> here = u[^2];
-            double source = edge.SourcePerYear * _years;
-            for (int i = u.Length - 2; i >= 1; i--)
+            for (nint i = u.Length - 2; i >= 1; i--)
             {
-                Vector128<double> below = u[i - 1];
-                Vector128<double> right = Vector128.FusedMultiplyAdd(side, above + below, middle * here);
+                Vector128<double> below = Unsafe.Add(ref row, i - 1);
+                Factor own = Unsafe.Add(ref factor, i);
+                Vector128<double> right = Vector128.FusedMultiplyAdd(side, above + below, middle * here) * own.Inverse;
                 if (i == edge.Row)
                 {
-                    right += Vector128.CreateScalar(source);
+                    right += Vector128.CreateScalar(edge.SourcePerYear * _years * own.Inverse);
                 }
 
-                value = Vector128.FusedMultiplyAdd(Vector128.Create(-ratio[i]), value, right * inverse[i]);
-                z[i] = value;
+                value = Vector128.FusedMultiplyAdd(Vector128.Create(own.Share), value, right);
+                Unsafe.Add(ref z, i) = value;
                 above = here;
                 here = below;
             }
@@ -127,13 +129,15 @@ internal sealed class HeatStepper
     {
         unchecked
         {
-            ReadOnlySpan<double> ratio = _ratio.AsSpan(0, u.Length);
-            ReadOnlySpan<Vector128<double>> z = _eliminated.AsSpan(0, u.Length);
+            ref Vector128<double> row = ref MemoryMarshal.GetReference(u);
+            ref Factor factor = ref MemoryMarshal.GetReference(_factors.AsSpan(0, u.Length));
+            ref Vector128<double> z = ref MemoryMarshal.GetReference(_eliminated.AsSpan(0, u.Length));
             Vector128<double> value = u[from - 1];
-            for (int i = from; i < u.Length - 1; i++)
+            nint last = u.Length - 1;
+            for (nint i = from; i < last; i++)
             {
-                value = Vector128.FusedMultiplyAdd(Vector128.Create(-ratio[i]), value, z[i]);
-                u[i] = value;
+                value = Vector128.FusedMultiplyAdd(Vector128.Create(Unsafe.Add(ref factor, i).Share), value, Unsafe.Add(ref z, i));
+                Unsafe.Add(ref row, i) = value;
             }
         }
     }
@@ -144,30 +148,34 @@ internal sealed class HeatStepper
     /// </summary>
     private ExerciseEdge SubstituteExercised(Span<Vector128<double>> u, ReadOnlySpan<double> ex, ExerciseValue exercise)
     {
-        if (u[0][0] > exercise.At(ex[0]))
+        double exercised = exercise.At(ex[0]);
+        if (u[0][0] > exercised)
         {
             Substitute(u, 1);
             return default;
         }
 
-        Vector128<double> value = u[0];
+        ReadOnlySpan<Factor> factors = _factors.AsSpan(0, u.Length);
+        ReadOnlySpan<Vector128<double>> eliminated = _eliminated.AsSpan(0, u.Length);
+        double european = u[0][1];
         for (int i = 1; i < u.Length - 1; i++)
         {
-            value = Vector128.FusedMultiplyAdd(Vector128.Create(-_ratio[i]), value, _eliminated[i]);
-            double exercised = exercise.At(ex[i]);
+            Factor own = factors[i];
+            Vector128<double> z = eliminated[i];
+            double held = z[0] + (own.Share * exercised);
+            european = Math.FusedMultiplyAdd(own.Share, european, z[1]);
+            exercised = exercise.At(ex[i]);
             double loss = Math.Max(exercise.LossOfWaiting(ex[i]), 0);
-            double gain = value[0] - exercised;
-            double most = 0.25 * loss * _years * _inverse[i];
+            double most = 0.25 * loss * _years * own.Inverse;
+            double gain = held - exercised;
             if (gain + most > 0)
             {
-                double held = Held(gain, most, loss * _rowVariance, out double share);
-                u[i] = value.WithElement(0, exercised + held);
+                u[i] = Vector128.Create(exercised + Held(gain, most, loss * _rowVariance, out double share), european);
                 Substitute(u, i + 1);
                 return new ExerciseEdge(i, 0.25 * loss * share);
             }
 
-            value = value.WithElement(0, exercised);
-            u[i] = value;
+            u[i] = Vector128.Create(exercised, european);
         }
 
         return default;
