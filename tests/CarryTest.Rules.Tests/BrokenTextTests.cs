@@ -41,7 +41,7 @@ public sealed class BrokenTextTests : IDisposable
                     Assert.All(refused.Message.Split('\n'), line => Assert.Matches(@"^(.*rules\.toml:\d+:\d+|--set costs\.schedule=none): ", line));
                 }
             },
-            iter: 2000,
+            iter: 600,
             threads: 1);
     }
 

@@ -46,7 +46,7 @@ public sealed class OverrideTests : IDisposable
     [InlineData("entry.too_good=2", "--set entry.too_good=2: `entry.too_good` must be a number above 0, at most 1; found 2")]
     [InlineData("entry.too_good=0,01", "--set entry.too_good=0,01: `entry.too_good` must be a number above 0, at most 1; found \"0,01\"")]
     [InlineData("assignment.rule=every", "--set assignment.rule=every: `assignment.rule = \"every\"` comes with a later version; this one knows chain | none")]
-    [InlineData("borrow.notice_days=2", "--set borrow.notice_days=2: `borrow.notice_days` has no effect in this version: recalls of borrowed stock come with a later one; take the key out")]
+    [InlineData("borrow.notice_days=2", "--set borrow.notice_days=2: `borrow.notice_days` has no effect in this version: recalls of borrowed stock come with a later version; take the key out")]
     [InlineData("entry=5", "--set entry=5: `entry` is a table of keys (per_share, bps_per_year, times_costs, too_good, max_spread_fraction, min_price_for_spread, stale_after_sessions, stock_agrees, ex_date_margin_days, max_undeclared_dividend, max_dividend_loss, long_exercise_value); found 5")]
     [InlineData("entry.per_share", "--set entry.per_share: write a setting and its value, as --set entry.per_share=0.05")]
     [InlineData("name=2025", "--set name=2025: `name` must be a name fit for a folder in quotes (letters, digits, spaces, `-`, `_` and `.`, at most 100); found 2025")]

@@ -25,7 +25,7 @@ internal sealed class AssumptionKeys
         _from = new Key<string>($"{table}.from", Forms.Text("a root in quotes, or \"own\""), "Of kind `implied`: the root whose chains imply the rate, or `own`.")
         {
             Otherwise = "a European root of the same currency",
-            Later = later.Contains(FundingKind.Implied) ? "rates that chains imply come with a later one" : null,
+            Later = later.Contains(FundingKind.Implied) ? "rates that chains imply come with a later version" : null,
         };
         _debitSpreadBps = new Key<double>($"{table}.debit_spread_bps", Forms.Number(-10_000, 10_000), "Added to the rate where cash is owed, basis points.") { Default = usual.DebitSpreadBps };
         _creditSpreadBps = new Key<double>($"{table}.credit_spread_bps", Forms.Number(-10_000, 10_000), "Taken from the rate where cash is held, basis points.") { Default = usual.CreditSpreadBps };
