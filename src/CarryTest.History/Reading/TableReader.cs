@@ -82,7 +82,7 @@ internal static class TableReader
 
     private static List<TableRow> Csv(string path, string[] required)
     {
-        var configuration = new CsvConfiguration(CultureInfo.InvariantCulture) { TrimOptions = TrimOptions.Trim, DetectDelimiter = false, Delimiter = ",", BadDataFound = null };
+        var configuration = new CsvConfiguration(CultureInfo.InvariantCulture) { TrimOptions = TrimOptions.Trim, DetectDelimiter = false, Delimiter = "," };
         using var reader = new CsvReader(new StreamReader(path), configuration);
         if (!reader.Read() || !reader.ReadHeader() || reader.HeaderRecord is not { } header)
         {
@@ -95,10 +95,16 @@ internal static class TableReader
         {
             while (reader.Read())
             {
+                if (reader.Parser.Count != header.Length)
+                {
+                    throw new InputException(
+                        $"{path}, row {reader.Parser.Row}: has {reader.Parser.Count} cells, the header {header.Length}. Mend the row; a decimal comma, or a comma in a text without quotes, is the usual cause.");
+                }
+
                 var cells = new Dictionary<string, string>();
                 for (int i = 0; i < header.Length; i++)
                 {
-                    cells[header[i]] = reader.TryGetField(i, out string? cell) ? cell ?? "" : "";
+                    cells[header[i]] = reader.Parser[i];
                 }
 
                 rows.Add(new TableRow(path, reader.Context.Parser!.Row, cells));
