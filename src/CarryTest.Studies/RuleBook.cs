@@ -52,4 +52,10 @@ public sealed record RuleBook
 
     /// <summary>Single settings that were overridden, `key=value`, in order.</summary>
     public ImmutableArray<string> Overrides { get; init; } = [];
+
+    /// <summary>All settings as they hold, in the order of documentation: the dotted key, the value in canonical form (in words where no value says it), and whether the rule book or an override wrote it.</summary>
+    public ImmutableArray<(string Key, string Value, bool Written)> Effective { get; init; } = [];
+
+    /// <summary>The tables that only studies read (`sweep`, `variant`, `surprise`, `funding_case`) and that this rule book has; a replay does not use them.</summary>
+    public ImmutableArray<string> StudyTables { get; init; } = [];
 }

@@ -3,78 +3,120 @@ using System.Runtime.Intrinsics;
 namespace CarryTest.Pricing.Options;
 
 /// <summary>
-/// Finite differences for one contract, with and without early exercise side by side on the same grid.
+/// One contract carried backwards from expiry, with (lane 0) and without (lane 1) early exercise side by side on the same grid.
 /// </summary>
 /// <remarks>
 /// With x = ln(spot) + (rate - yield - volatility²/2) τ, τ the years left, and u = value exp(rate τ), the equation of Black and
-/// Scholes becomes that of heat, u_τ = volatility²/2 u_xx: no drift, no discounting, the same matrix in every row. It is
-/// solved by the compact scheme of fourth order in space (J. Douglas, 1962) and Crank-Nicolson in time, with four half steps
-/// of implicit Euler after every kink (R. Rannacher, 1984). Early exercise: M. J. Brennan and E. S. Schwartz, The valuation of
-/// American put options, Journal of Finance 32, 1977. Row 0 lies on the side on which exercise pays, so calls run downwards.
-/// Each stretch between ex-dates has a grid fitted to the variance since its start, and values pass from one to the next by
-/// interpolation at the price after the drop.
+/// Scholes becomes that of heat, u_τ = volatility²/2 u_xx: no drift, no discounting, the same weights in every row. Where
+/// exercise never pays between ex-dates it is solved without error of time (<see cref="HeatConvolution"/>). Else by the compact
+/// scheme of fourth order in space (J. Douglas, 1962) and Crank-Nicolson in time, with four half steps of implicit Euler after
+/// every kink (R. Rannacher, 1984) and the exercise of M. J. Brennan and E. S. Schwartz, The valuation of American put options,
+/// Journal of Finance 32, 1977. Row 0 lies on the side on which exercise pays, so calls run downwards. Each stretch between
+/// ex-dates has a grid fitted to the variance since expiry; values pass from one to the next by interpolation at the price
+/// after the drop.
 /// </remarks>
 internal sealed class BackwardSweep
 {
     private const double HalfWidth = 5.5;
+    private const double EdgeWidth = 2;
     private const int WidestGrid = 8;
     private const int FewestSteps = 4;
+
+    /// <summary>A stretch is divided into blocks, each four times as long as the one before, with the same number of steps: the
+    /// exercise price moves fastest at its start.</summary>
+    private const int BlocksAtExpiry = 4;
+    private const int BlocksAtExDate = 3;
+    private const double BlockRatio = 4;
 
     [ThreadStatic]
     private static BackwardSweep? _own;
 
     private readonly HeatStepper _stepper = new();
+    private readonly HeatConvolution _convolution = new();
     private HeatGrid _grid = new();
     private HeatGrid _spare = new();
     private OptionTerms _terms;
     private GridSize _size;
+    private bool _stepped;
     private double _drift;
+    private double _low;
+    private double _high;
     private double _paid;
     private double _paidAt;
+    private ExerciseEdge _edge;
 
     /// <summary>Solves; dividends latest first, inside (0, years].</summary>
     public static AmericanSolution Solve(
         OptionTerms terms, ReadOnlySpan<CashDividend> dividends, double spotLow, double spotHigh, GridSize size)
     {
         BackwardSweep sweep = _own ??= new BackwardSweep();
-        sweep.Run(terms, dividends, size);
-        return sweep.Read(dividends.Length == 0, spotLow, spotHigh);
+        double scale = Math.Exp((terms.Rate - terms.Yield - (0.5 * terms.Volatility * terms.Volatility)) * terms.Years);
+        sweep._low = spotLow * scale;
+        sweep._high = spotHigh * scale;
+        SpotCurve? premium = null;
+        if (terms.ExercisedBetweenExDates)
+        {
+            sweep.Run(terms, dividends, size, stepped: true);
+            premium = sweep.Read(premium: true);
+        }
+
+        Func<double, double> european = terms.BlackValue;
+        if (dividends.Length > 0)
+        {
+            // The European value has no error of time this way, and the premium above came from one grid.
+            sweep.Run(terms, dividends, size, stepped: false);
+            SpotCurve curve = sweep.Read(premium: false);
+            CashDividend[] kept = dividends.ToArray();
+            european = spot => curve.Covers(spot * scale)
+                ? Math.Max(curve.At(spot * scale), 0)
+                : CertainPath.European(terms, kept, spot);
+            premium ??= terms.MayBeExercisedEarly(true) ? sweep.Read(premium: true) : null;
+        }
+
+        return new AmericanSolution(terms, spotLow, spotHigh, european, premium is null ? null : Worth(terms, premium, dividends, scale));
     }
 
-    private void Run(OptionTerms terms, ReadOnlySpan<CashDividend> dividends, GridSize size)
+    /// <summary>Early exercise from the curve; beyond it the option is certain to be exercised or not.</summary>
+    private static Func<double, double> Worth(
+        OptionTerms terms, SpotCurve premium, ReadOnlySpan<CashDividend> dividends, double scale)
+    {
+        CashDividend[] kept = dividends.ToArray();
+        return spot => premium.Covers(spot * scale)
+            ? premium.At(spot * scale)
+            : CertainPath.American(terms, kept, spot) - CertainPath.European(terms, kept, spot);
+    }
+
+    private void Run(OptionTerms terms, ReadOnlySpan<CashDividend> dividends, GridSize size, bool stepped)
     {
         _terms = terms;
         _size = size;
+        _stepped = stepped;
         _drift = terms.Rate - terms.Yield - (0.5 * terms.Volatility * terms.Volatility);
         _paid = 0;
         _paidAt = 0;
         int next = 0;
         double left = 0;
-        bool closedStart = dividends.Length > 0 && !terms.ExercisedBetweenExDates;
-        if (closedStart || (dividends.Length > 0 && Left(dividends[0]) <= 0))
+        if (dividends.Length > 0 && (!stepped || Left(dividends[0]) <= 0))
         {
             left = Math.Max(Left(dividends[0]), 0);
             next = 1;
-            double amount = dividends[0].Amount;
-            LayFor(left, EndOf(dividends, next), amount);
-            StartAtExDate(left, amount);
+            StartAtExDate(left, EndOf(dividends, next), dividends[0].Amount);
         }
         else
         {
-            LayFor(0, EndOf(dividends, 0), 0);
-            StartAtExpiry();
+            StartAtExpiry(EndOf(dividends, 0));
         }
 
         while (true)
         {
             double end = EndOf(dividends, next);
-            Diffuse(left, end);
-            left = end;
+            Diffuse(left, end, next >= dividends.Length);
             if (next >= dividends.Length)
             {
                 return;
             }
 
+            left = end;
             double amount = dividends[next].Amount;
             next++;
             Drop(left, EndOf(dividends, next), amount);
@@ -86,48 +128,9 @@ internal sealed class BackwardSweep
     private double EndOf(ReadOnlySpan<CashDividend> dividends, int next)
         => next < dividends.Length ? Left(dividends[next]) : _terms.Years;
 
-    /// <summary>
-    /// Lays a grid for the stretch of years left from <paramref name="start"/> to <paramref name="end"/>, over all prices at
-    /// which the option is not a straight line; <paramref name="amount"/> is the dividend just before the start.
-    /// </summary>
-    private void LayFor(double start, double end, double amount)
+    private void StartAtExpiry(double end)
     {
-        _paid = (_paid * Math.Exp(-(_terms.Rate - _terms.Yield) * (start - _paidAt))) + amount;
-        _paidAt = start;
-        double deviation = _terms.Volatility * Math.Sqrt(end);
-        double centreAtStart = Centre(start, start);
-        double centreAtEnd = Centre(start, end);
-        double atStrike = Math.Log(_terms.Strike) + (_drift * end);
-        double low = Math.Min(centreAtStart, centreAtEnd) - (HalfWidth * deviation);
-        double high = Math.Max(centreAtStart, centreAtEnd) + (HalfWidth * deviation);
-        low = Math.Min(low, atStrike - (2 * deviation));
-        high = Math.Max(high, atStrike + (2 * deviation));
-        double step = 2 * HalfWidth * deviation / _size.SpaceSteps;
-        int count = (int)Math.Min(Math.Ceiling((high - low) / step), (double)WidestGrid * _size.SpaceSteps);
-        step = (high - low) / count;
-        // A row on the kink.
-        low = centreAtStart - (Math.Round((centreAtStart - low) / step) * step);
-        if (_terms.Right == OptionRight.Put)
-        {
-            _spare.Lay(low, step, count + 1);
-        }
-        else
-        {
-            _spare.Lay(low + (count * step), -step, count + 1);
-        }
-    }
-
-    /// <summary>x of the price that grows, less the dividends on the way, to the strike at expiry.</summary>
-    private double Centre(double start, double at)
-    {
-        double carry = _terms.Rate - _terms.Yield;
-        double price = (_terms.Strike * Math.Exp(-carry * at)) + (_paid * Math.Exp(-carry * (at - start)));
-        return Math.Log(price) + (_drift * at);
-    }
-
-    private void StartAtExpiry()
-    {
-        Take();
+        Lay(0, end, 0);
         Span<Vector128<double>> values = _grid.Values;
         ReadOnlySpan<double> prices = _grid.Exponentials;
         for (int i = 0; i < values.Length; i++)
@@ -135,13 +138,13 @@ internal sealed class BackwardSweep
             values[i] = Vector128.Create(_terms.Intrinsic(prices[i]));
         }
 
-        _grid.SmoothKink(Math.Log(_terms.Strike), Vector128.Create(_terms.Strike), 0);
+        SmoothStrike(0);
     }
 
     /// <summary>Just before the last ex-date, where the closed form is known after it (at expiry: the payoff).</summary>
-    private void StartAtExDate(double left, double amount)
+    private void StartAtExDate(double left, double end, double amount)
     {
-        Take();
+        Lay(left, end, amount);
         Span<Vector128<double>> values = _grid.Values;
         ReadOnlySpan<double> exponentials = _grid.Exponentials;
         double growth = Math.Exp(_terms.Rate * left);
@@ -149,10 +152,15 @@ internal sealed class BackwardSweep
         for (int i = 0; i < values.Length; i++)
         {
             double after = Math.Max((exponentials[i] * toSpot) - amount, 0);
-            values[i] = Vector128.Create(growth * (left > 0 ? _terms.BlackValue(after, left) : _terms.Intrinsic(after)));
+            values[i] = Vector128.Create(growth * _terms.BlackValue(after, left));
         }
 
         SmoothStrike(left);
+        if (_terms.Right == OptionRight.Put)
+        {
+            SmoothFloor(amount / toSpot, Vector128.Create(-Math.Exp(_drift * -left) * growth * Math.Exp(-_terms.Yield * left)));
+        }
+
         ExerciseBeforeDrop(left);
     }
 
@@ -160,8 +168,7 @@ internal sealed class BackwardSweep
     private void Drop(double left, double end, double amount)
     {
         HeatGrid after = _grid;
-        LayFor(left, end, amount);
-        Take();
+        Lay(left, end, amount);
         Span<Vector128<double>> values = _grid.Values;
         ReadOnlySpan<double> exponentials = _grid.Exponentials;
         double drop = amount * Math.Exp(_drift * left);
@@ -171,12 +178,73 @@ internal sealed class BackwardSweep
         }
 
         SmoothStrike(left);
+        double lowest = Math.Min(after.Exponentials[0], after.Exponentials[^1]);
+        SmoothFloor(drop, (after.At(lowest) - after.At(0)) / lowest);
         ExerciseBeforeDrop(left);
+    }
+
+    /// <summary>Where the dividend takes the whole price, the value after it stops changing.</summary>
+    /// <param name="drop">the dividend, as exp(x)</param>
+    /// <param name="slope">of the value against exp(x) just after the drop to nothing</param>
+    private void SmoothFloor(double drop, Vector128<double> slope) => _grid.SmoothKink(Math.Log(drop), slope * drop, 0);
+
+    /// <summary>
+    /// Lays a new grid for the stretch of years left from <paramref name="start"/> to <paramref name="end"/>, over all prices at
+    /// which the option is not a straight line; <paramref name="amount"/> is the dividend just before the start.
+    /// </summary>
+    private void Lay(double start, double end, double amount)
+    {
+        double carry = _terms.Rate - _terms.Yield;
+        _paid = (_paid * Math.Exp(-carry * (start - _paidAt))) + amount;
+        _paidAt = start;
+        double deviation = _terms.Volatility * Math.Sqrt(end);
+        double centreAtStart = Centre(start);
+        double centreAtEnd = Centre(end);
+        double low = Math.Min(centreAtStart, centreAtEnd) - (HalfWidth * deviation);
+        double high = Math.Max(centreAtStart, centreAtEnd) + (HalfWidth * deviation);
+        if (_stepped)
+        {
+            // The exercise price stays within sight of the strike, while the centre moves with the forward.
+            double strike = Math.Log(_terms.Strike) + (_drift * end);
+            low = Math.Min(low, strike - (EdgeWidth * deviation));
+            high = Math.Max(high, strike + (EdgeWidth * deviation));
+        }
+
+        double floor = Math.Log(_paid) + (_drift * start);
+        if (_paid > 0 && Math.Log(_low) < floor + (HalfWidth * deviation))
+        {
+            // Spots are asked for at which a dividend may take the whole price.
+            low = Math.Min(low, floor - (HalfWidth * deviation));
+        }
+
+        // Without exercise the curve is smooth, and half the rows are more than enough.
+        int steps = _stepped || _terms.Right == OptionRight.Call ? _size.SpaceSteps : _size.SpaceSteps / 2;
+        double step = 2 * HalfWidth * deviation / steps;
+        int count = (int)Math.Min(Math.Ceiling((high - low) / step), (double)WidestGrid * steps);
+        step = (high - low) / count;
+        int below = (int)Math.Round((centreAtStart - low) / step);
+        (_grid, _spare) = (_spare, _grid);
+        if (_terms.Right == OptionRight.Put)
+        {
+            _grid.Lay(centreAtStart - (below * step), step, count + 1);
+        }
+        else
+        {
+            _grid.Lay(centreAtStart + ((count - below) * step), -step, count + 1);
+        }
+    }
+
+    /// <summary>x, some years before expiry, of the price that grows to the strike, less the dividends on the way.</summary>
+    private double Centre(double left)
+    {
+        double carry = _terms.Rate - _terms.Yield;
+        double price = (_terms.Strike * Math.Exp(-carry * left)) + (_paid * Math.Exp(-carry * (left - _paidAt)));
+        return Math.Log(price) + (_drift * left);
     }
 
     private void SmoothStrike(double left)
     {
-        double x = Centre(left, left);
+        double x = Centre(left);
         double jump = Math.Exp(x - (_drift * left) + (_terms.Rate * left));
         _grid.SmoothKink(x, Vector128.Create(jump), _terms.Volatility * Math.Sqrt(left));
     }
@@ -191,22 +259,25 @@ internal sealed class BackwardSweep
 
         Span<Vector128<double>> values = _grid.Values;
         ReadOnlySpan<double> exponentials = _grid.Exponentials;
-        (double level, double slope) = Exercise(left);
+        ExerciseValue exercise = Exercise(left);
         double before = 0;
         for (int i = 0; i < values.Length; i++)
         {
-            double held = values[i][0];
-            double exercised = level + (slope * exponentials[i]);
-            double gain = exercised - held;
+            double exercised = exercise.At(exponentials[i]);
+            double gain = exercised - values[i][0];
             if (gain > 0)
             {
                 values[i] = values[i].WithElement(0, exercised);
             }
-            else if (i > 0 && before > 0)
+            else
             {
-                double theta = before / (before - gain);
-                _grid.SmoothKink(
-                    _grid.Start + ((i - 1 + theta) * _grid.Step), Vector128.Create((before - gain) / Math.Abs(_grid.Step), 0), 0);
+                if (before > 0)
+                {
+                    double row = i - 1 + (before / (before - gain));
+                    double jump = (before - gain) / Math.Abs(_grid.Step);
+                    _grid.SmoothKink(_grid.Start + (row * _grid.Step), Vector128.CreateScalar(jump), 0);
+                }
+
                 return;
             }
 
@@ -214,15 +285,15 @@ internal sealed class BackwardSweep
         }
     }
 
-    /// <summary>Level and slope of what exercise pays, in u, against exp(x).</summary>
-    private (double Level, double Slope) Exercise(double left)
+    private ExerciseValue Exercise(double left)
     {
-        double level = _terms.Strike * Math.Exp(_terms.Rate * left);
-        double slope = Math.Exp((_terms.Rate - _drift) * left);
-        return _terms.Right == OptionRight.Put ? (level, -slope) : (-level, slope);
+        double sign = _terms.Right == OptionRight.Put ? 1 : -1;
+        double level = sign * _terms.Strike * Math.Exp(_terms.Rate * left);
+        double slope = -sign * Math.Exp((_terms.Rate - _drift) * left);
+        return new ExerciseValue(level, slope, _terms.Rate * level, _terms.Yield * slope);
     }
 
-    private void Diffuse(double start, double end)
+    private void Diffuse(double start, double end, bool final)
     {
         double length = end - start;
         if (!(length > 0))
@@ -230,62 +301,56 @@ internal sealed class BackwardSweep
             return;
         }
 
+        double deviation = _terms.Volatility * Math.Sqrt(length);
+        if (!_stepped && deviation >= HeatConvolution.Narrowest * Math.Abs(_grid.Step))
+        {
+            (int first, int last) = final ? SpotCurve.Rows(_grid, _low, _high) : (0, _grid.Count - 1);
+            _convolution.Spread(_grid, deviation, first, last);
+            return;
+        }
+
+        _edge = default;
         double share = (Math.Sqrt(end) - Math.Sqrt(start)) / Math.Sqrt(_terms.Years);
-        int steps = Math.Max(FewestSteps, (int)Math.Ceiling(_size.TimeSteps * share));
+        int blocks = start > 0 ? BlocksAtExDate : BlocksAtExpiry;
+        int steps = (Math.Max(FewestSteps, (int)Math.Ceiling(_size.TimeSteps * share)) + blocks - 1) / blocks;
         double at = start;
-        int blocks = 3;
-        int per = (steps + blocks - 1) / blocks;
         for (int block = 0; block < blocks; block++)
         {
-            double blockStart = block == 0 ? 0 : length * Math.Pow(4, block - blocks);
-            double blockEnd = length * Math.Pow(4, block + 1 - blocks);
-            double dt = (blockEnd - blockStart) / per;
-            _stepper.Prepare(_grid, _terms.Volatility * _terms.Volatility * dt);
-            at = start + blockStart;
-            int halves = block == 0 ? 4 : 0;
-            for (int k = 0; k < halves; k++)
-            {
-                at += dt / 2;
-                Step(true, at);
-            }
+            double blockEnd = start + (length * Math.Pow(BlockRatio, block + 1 - blocks));
+            March(at, blockEnd, steps, halves: block == 0 ? 4 : 0);
+            at = blockEnd;
+        }
+    }
 
-            for (int k = halves / 2; k < per; k++)
-            {
-                at += dt;
-                Step(false, at);
-            }
+    /// <summary>Steps of equal length, the first ones cut into halves.</summary>
+    private void March(double start, double end, int steps, int halves)
+    {
+        steps = Math.Max(steps, halves / 2);
+        double length = (end - start) / steps;
+        _stepper.Prepare(_grid, _terms.Volatility, length);
+        for (int k = 1; k <= halves; k++)
+        {
+            Step(true, start + (k * length / 2));
+        }
+
+        for (int k = (halves / 2) + 1; k <= steps; k++)
+        {
+            Step(false, start + (k * length));
         }
     }
 
     private void Step(bool half, double left)
     {
-        if (_terms.ExercisedBetweenExDates)
+        if (_stepped)
         {
-            (double level, double slope) = Exercise(left);
-            _stepper.Step(_grid, half, Vector128.Create(level, double.NegativeInfinity), Vector128.Create(slope, 0));
-            return;
+            _edge = _stepper.Step(_grid, half, Exercise(left), _edge);
         }
-
-        _stepper.Step(_grid, half, Vector128.Create(double.NegativeInfinity), Vector128<double>.Zero);
+        else
+        {
+            _stepper.Step(_grid, half);
+        }
     }
 
-    /// <summary>Makes the grid just laid the current one.</summary>
-    private void Take() => (_grid, _spare) = (_spare, _grid);
-
-    /// <summary>Takes the values out, as functions of the spot.</summary>
-    private AmericanSolution Read(bool closedForm, double spotLow, double spotHigh)
-    {
-        OptionTerms terms = _terms;
-        double discount = Math.Exp(-terms.Rate * terms.Years);
-        double toExponential = Math.Exp(_drift * terms.Years);
-        SpotCurve premium = SpotCurve.Of(_grid, spotLow * toExponential, spotHigh * toExponential, discount, true);
-        if (closedForm)
-        {
-            return new AmericanSolution(terms, spotLow, spotHigh, terms.BlackValue, spot => premium.At(spot * toExponential));
-        }
-
-        SpotCurve european = SpotCurve.Of(_grid, spotLow * toExponential, spotHigh * toExponential, discount, false);
-        Func<double, double>? worth = terms.MayBeExercisedEarly(true) ? spot => premium.At(spot * toExponential) : null;
-        return new AmericanSolution(terms, spotLow, spotHigh, spot => european.At(spot * toExponential), worth);
-    }
+    private SpotCurve Read(bool premium)
+        => SpotCurve.Of(_grid, _low, _high, Math.Exp(-_terms.Rate * _terms.Years), premium);
 }

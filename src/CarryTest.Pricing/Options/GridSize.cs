@@ -6,10 +6,10 @@ namespace CarryTest.Pricing.Options;
 public readonly record struct GridSize(int SpaceSteps, int TimeSteps)
 {
     /// <summary>For first looks.</summary>
-    public static GridSize Fast { get; } = new(100, 30);
+    public static GridSize Fast { get; } = new(100, 40);
 
     /// <summary>For books and reports.</summary>
-    public static GridSize Standard { get; } = new(200, 80);
+    public static GridSize Standard { get; } = new(240, 100);
 
     /// <summary>For checks.</summary>
     public static GridSize Fine { get; } = new(600, 400);

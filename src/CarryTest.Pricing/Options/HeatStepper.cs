@@ -1,116 +1,205 @@
+using System.Runtime.CompilerServices;
+using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
 namespace CarryTest.Pricing.Options;
 
 /// <summary>Steps of time for the heat equation on a grid: one matrix, factored once for steps of one length.</summary>
+/// <remarks>
+/// Every row but the ends: (1 + δ²/12)(u' - u) = volatility² dt/(2 dx²) δ²(u' + u)/2 with δ² the second difference. Where
+/// exercise pays, the row is held up by what exercise pays; its equation then lacks the loss of waiting. The first row that
+/// is held has a cell that lies partly beyond the exercise price, and takes that part of the loss as a source: without it
+/// the exercise price moves in jumps from row to row and the value is too low by the square of the step.
+/// </remarks>
 internal sealed class HeatStepper
 {
     private Vector128<double>[] _eliminated = [];
-    private double[] _inverse = [];
-    private double[] _ratio = [];
+    private Factor[] _factors = [];
 
-    private int _count;
-    private double _off;
-    private double _diagonal;
+    private double _years;
     private double _number;
+    private double _rowVariance;
     private double _growthAtFirst;
     private double _growthAtLast;
 
-    /// <summary>Factors the matrix.</summary>
-    /// <param name="grid">the rows</param>
-    /// <param name="variance">of one step of Crank-Nicolson: volatility² times its years</param>
-    public void Prepare(HeatGrid grid, double variance)
+    /// <summary>Factors the matrix for steps of some years.</summary>
+    public void Prepare(HeatGrid grid, double volatility, double years)
     {
-        _count = grid.Count;
-        if (_inverse.Length < _count)
+        int count = grid.Count;
+        if (_factors.Length < count)
         {
-            _eliminated = new Vector128<double>[_count];
-            _inverse = new double[_count];
-            _ratio = new double[_count];
+            _eliminated = new Vector128<double>[count];
+            _factors = new Factor[count];
         }
 
         double step = grid.Step;
+        double variance = volatility * volatility * years;
+        _years = years;
         _number = variance / (4 * step * step);
-        _off = (1.0 / 12) - _number;
-        _diagonal = (10.0 / 12) + (2 * _number);
-        _growthAtFirst = Math.Exp(variance / 2) - 1;
-        double above = 0;
-        for (int i = _count - 2; i >= 1; i--)
+        _rowVariance = step * step / (volatility * volatility);
+        double growth = Math.Exp(variance / 2) - 1;
+        _growthAtFirst = growth / (Math.Exp(step) - 1);
+        _growthAtLast = growth / (Math.Exp(-step) - 1);
+        double off = (1.0 / 12) - _number;
+        double diagonal = (10.0 / 12) + (2 * _number);
+        double share = 0;
+        for (int i = count - 2; i >= 1; i--)
         {
-            double inverse = 1 / (_diagonal - (_off * above));
-            above = _off * inverse;
-            _inverse[i] = inverse;
-            _ratio[i] = above;
+            double inverse = 1 / (diagonal + (off * share));
+            share = -off * inverse;
+            _factors[i] = new Factor(inverse, share);
         }
-
-        _growthAtLast = _growthAtFirst / (Math.Exp(-step) - 1);
-        _growthAtFirst /= Math.Exp(step) - 1;
     }
 
+    /// <summary>Of one row of the matrix: the inverse of its pivot, and what a neighbour gives to it.</summary>
+    private readonly record struct Factor(double Inverse, double Share);
+
     /// <summary>
-    /// One step: Crank-Nicolson over the whole length, or implicit Euler over half of it; both have the same matrix.
+    /// One step without a right to exercise: Crank-Nicolson over the whole length, or implicit Euler over half of it; both have
+    /// the same matrix.
     /// </summary>
+    public void Step(HeatGrid grid, bool half)
+    {
+        Span<Vector128<double>> u = grid.Values;
+        (Vector128<double> first, Vector128<double> last) = Ends(u, half);
+        Eliminate(u, half, last, default);
+        u[0] = first;
+        u[^1] = last;
+        Substitute(u, 1);
+    }
+
+    /// <summary>The same with the right to exercise in lane 0.</summary>
     /// <param name="grid">values before, and after</param>
     /// <param name="half">implicit Euler over half the length</param>
-    /// <param name="level">exercise value of a row is level + slope exp(x), at the end of the step; minus infinity where there is no right</param>
-    /// <param name="slope">see level</param>
-    public void Step(HeatGrid grid, bool half, Vector128<double> level, Vector128<double> slope)
+    /// <param name="exercise">at the end of the step</param>
+    /// <param name="edge">where exercise stops paying, before the step</param>
+    /// <returns>where exercise stops paying, after the step</returns>
+    public ExerciseEdge Step(HeatGrid grid, bool half, ExerciseValue exercise, ExerciseEdge edge)
     {
         Span<Vector128<double>> u = grid.Values;
         ReadOnlySpan<double> ex = grid.Exponentials;
-        int last = u.Length - 1;
-        double share = half ? 0.5 : 1;
-        Vector128<double> first = Vector128.MaxNative(u[0] + ((u[1] - u[0]) * (share * _growthAtFirst)), level + (slope * ex[0]));
-        Vector128<double> end = Vector128.MaxNative(u[last] + ((u[last - 1] - u[last]) * (share * _growthAtLast)), level + (slope * ex[last]));
-        double side = half ? 1.0 / 12 : (1.0 / 12) + _number;
-        double middle = half ? 10.0 / 12 : (10.0 / 12) - (2 * _number);
-        Eliminate(u, side, middle, end);
-        u[0] = first;
-        u[last] = end;
-        Substitute(u, ex, level, slope);
+        (Vector128<double> first, Vector128<double> last) = Ends(u, half);
+        last = last.WithElement(0, Math.Max(last[0], exercise.At(ex[^1])));
+        Eliminate(u, half, last, half ? default : edge);
+        u[0] = first.WithElement(0, Math.Max(first[0], exercise.At(ex[0])));
+        u[^1] = last;
+        return SubstituteExercised(u, ex, exercise);
     }
 
-    private void Eliminate(ReadOnlySpan<Vector128<double>> u, double side, double middle, Vector128<double> end)
+    /// <summary>New values of the end rows, where the value is a straight line in exp(x), which grows in a known way.</summary>
+    private (Vector128<double> First, Vector128<double> Last) Ends(ReadOnlySpan<Vector128<double>> u, bool half)
+    {
+        double share = half ? 0.5 : 1;
+        return (u[0] + ((u[1] - u[0]) * (share * _growthAtFirst)), u[^1] + ((u[^2] - u[^1]) * (share * _growthAtLast)));
+    }
+
+    /// <summary>From the last row down: leaves of each row its value, less what it takes from the row below.</summary>
+    private void Eliminate(ReadOnlySpan<Vector128<double>> u, bool half, Vector128<double> last, ExerciseEdge edge)
     {
         unchecked
         {
-            int last = u.Length - 1;
-            Vector128<double> sides = Vector128.Create(side);
-            Vector128<double> middles = Vector128.Create(middle);
-            ReadOnlySpan<double> inverse = _inverse.AsSpan(0, u.Length);
-            ReadOnlySpan<double> ratio = _ratio.AsSpan(0, u.Length);
-            Span<Vector128<double>> z = _eliminated.AsSpan(0, u.Length);
-            Vector128<double> z1 = end;
-            Vector128<double> above = u[last];
-            Vector128<double> here = u[last - 1];
-            for (int i = last - 1; i >= 1; i--)
+            Vector128<double> side = Vector128.Create(half ? 1.0 / 12 : (1.0 / 12) + _number);
+            Vector128<double> middle = Vector128.Create(half ? 10.0 / 12 : (10.0 / 12) - (2 * _number));
+            ref Vector128<double> row = ref MemoryMarshal.GetReference(u);
+            ref Factor factor = ref MemoryMarshal.GetReference(_factors.AsSpan(0, u.Length));
+            ref Vector128<double> z = ref MemoryMarshal.GetReference(_eliminated.AsSpan(0, u.Length));
+            Vector128<double> value = last;
+            Vector128<double> above = u[^1];
+            Vector128<double> here = u[^2];
+            for (nint i = u.Length - 2; i >= 1; i--)
             {
-                Vector128<double> below = u[i - 1];
-                Vector128<double> right = Vector128.FusedMultiplyAdd(sides, above + below, middles * here) * inverse[i];
-                // The end row enters with its own weight: ratio of the row above it is off/diagonal.
-                z1 = Vector128.FusedMultiplyAdd(Vector128.Create(-ratio[i]), z1, right);
-                z[i] = z1;
+                Vector128<double> below = Unsafe.Add(ref row, i - 1);
+                Factor own = Unsafe.Add(ref factor, i);
+                Vector128<double> right = Vector128.FusedMultiplyAdd(side, above + below, middle * here) * own.Inverse;
+                if (i == edge.Row)
+                {
+                    right += Vector128.CreateScalar(edge.SourcePerYear * _years * own.Inverse);
+                }
+
+                value = Vector128.FusedMultiplyAdd(Vector128.Create(own.Share), value, right);
+                Unsafe.Add(ref z, i) = value;
                 above = here;
                 here = below;
             }
         }
     }
 
-    private void Substitute(Span<Vector128<double>> u, ReadOnlySpan<double> ex, Vector128<double> level, Vector128<double> slope)
+    /// <summary>Upwards from a row whose neighbour below is known.</summary>
+    private void Substitute(Span<Vector128<double>> u, int from)
     {
         unchecked
         {
-            int last = u.Length - 1;
-            ReadOnlySpan<double> ratio = _ratio.AsSpan(0, u.Length);
-            ReadOnlySpan<Vector128<double>> z = _eliminated.AsSpan(0, u.Length);
-            ReadOnlySpan<double> exponentials = ex[..u.Length];
-            Vector128<double> value = u[0];
-            for (int i = 1; i < last; i++)
+            ref Vector128<double> row = ref MemoryMarshal.GetReference(u);
+            ref Factor factor = ref MemoryMarshal.GetReference(_factors.AsSpan(0, u.Length));
+            ref Vector128<double> z = ref MemoryMarshal.GetReference(_eliminated.AsSpan(0, u.Length));
+            Vector128<double> value = u[from - 1];
+            nint last = u.Length - 1;
+            for (nint i = from; i < last; i++)
             {
-                Vector128<double> exercise = Vector128.FusedMultiplyAdd(slope, Vector128.Create(exponentials[i]), level);
-                value = Vector128.MaxNative(Vector128.FusedMultiplyAdd(Vector128.Create(-ratio[i]), value, z[i]), exercise);
-                u[i] = value;
+                value = Vector128.FusedMultiplyAdd(Vector128.Create(Unsafe.Add(ref factor, i).Share), value, Unsafe.Add(ref z, i));
+                Unsafe.Add(ref row, i) = value;
             }
         }
+    }
+
+    /// <summary>
+    /// Upwards from row 0: exercised as long as that pays more, then held. There is one change only, as the value never falls
+    /// or rises faster with the price than what exercise pays.
+    /// </summary>
+    private ExerciseEdge SubstituteExercised(Span<Vector128<double>> u, ReadOnlySpan<double> ex, ExerciseValue exercise)
+    {
+        double exercised = exercise.At(ex[0]);
+        if (u[0][0] > exercised)
+        {
+            Substitute(u, 1);
+            return default;
+        }
+
+        ReadOnlySpan<Factor> factors = _factors.AsSpan(0, u.Length);
+        ReadOnlySpan<Vector128<double>> eliminated = _eliminated.AsSpan(0, u.Length);
+        double european = u[0][1];
+        for (int i = 1; i < u.Length - 1; i++)
+        {
+            Factor own = factors[i];
+            Vector128<double> z = eliminated[i];
+            double held = z[0] + (own.Share * exercised);
+            european = Math.FusedMultiplyAdd(own.Share, european, z[1]);
+            exercised = exercise.At(ex[i]);
+            double loss = Math.Max(exercise.LossOfWaiting(ex[i]), 0);
+            double most = 0.25 * loss * _years * own.Inverse;
+            double gain = held - exercised;
+            if (gain + most > 0)
+            {
+                u[i] = Vector128.Create(exercised + Held(gain, most, loss * _rowVariance, out double share), european);
+                Substitute(u, i + 1);
+                return new ExerciseEdge(i, 0.25 * loss * share);
+            }
+
+            u[i] = Vector128.Create(exercised, european);
+        }
+
+        return default;
+    }
+
+    /// <summary>
+    /// Gain of holding in the first row held. Beyond the exercise price it grows as curve (y/dx)² with the distance y of the
+    /// row; of a cell that reaches over the exercise price a share (1 - y/dx)² of the loss of waiting enters.
+    /// </summary>
+    /// <param name="gain">without the source</param>
+    /// <param name="most">the source for y = 0</param>
+    /// <param name="curve">gain one step beyond the exercise price</param>
+    /// <param name="share">of the loss that enters</param>
+    private static double Held(double gain, double most, double curve, out double share)
+    {
+        if (gain >= curve)
+        {
+            share = 0;
+            return gain;
+        }
+
+        double root = Math.Sqrt((curve * (most + gain)) - (most * gain));
+        double distance = Math.Min((most + gain) / (most + root), 1);
+        share = (1 - distance) * (1 - distance);
+        return curve * distance * distance;
     }
 }

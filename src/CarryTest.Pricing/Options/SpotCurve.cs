@@ -21,11 +21,7 @@ internal sealed class SpotCurve
     /// <summary>Copies the rows around a range of exp(x): early-exercise premium or European value, times a factor.</summary>
     public static SpotCurve Of(HeatGrid grid, double low, double high, double factor, bool premium)
     {
-        double a = (Math.Log(low) - grid.Start) / grid.Step;
-        double b = (Math.Log(high) - grid.Start) / grid.Step;
-        int most = grid.Count - 1;
-        int first = (int)Math.Clamp(Math.Floor(Math.Min(a, b)) - Margin, 0, most - 3);
-        int last = (int)Math.Clamp(Math.Ceiling(Math.Max(a, b)) + Margin, first + 3, most);
+        (int first, int last) = Rows(grid, low, high);
         double[] values = new double[last - first + 1];
         ReadOnlySpan<Vector128<double>> rows = grid.Values;
         for (int i = 0; i < values.Length; i++)
@@ -37,23 +33,29 @@ internal sealed class SpotCurve
         return new SpotCurve(values, grid.Start + (first * grid.Step), grid.Step);
     }
 
-    /// <summary>Cubic within the rows; beyond them the straight line in exp(x) through the last two.</summary>
+    /// <summary>The rows, at least four, that are needed to read a range of exp(x).</summary>
+    public static (int First, int Last) Rows(HeatGrid grid, double low, double high)
+    {
+        double a = (Math.Log(low) - grid.Start) / grid.Step;
+        double b = (Math.Log(high) - grid.Start) / grid.Step;
+        int most = grid.Count - 1;
+        int first = (int)Math.Clamp(Math.Floor(Math.Min(a, b)) - Margin, 0, most - 3);
+        int last = (int)Math.Clamp(Math.Ceiling(Math.Max(a, b)) + Margin, first + 3, most);
+        return (first, last);
+    }
+
+    /// <summary>Whether exp(x) lies within the rows.</summary>
+    public bool Covers(double exponential)
+    {
+        double place = Place(exponential);
+        return place >= 0 && place <= _values.Length - 1;
+    }
+
+    /// <summary>The cubic through the four rows around exp(x), which lies within the rows.</summary>
     public double At(double exponential)
     {
-        double place = (Math.Log(exponential) - _start) / _step;
-        int last = _values.Length - 1;
-        if (place < 0)
-        {
-            return _values[0] + ((_values[1] - _values[0]) * ((Math.Exp(place * _step) - 1) / (Math.Exp(_step) - 1)));
-        }
-
-        if (place > last)
-        {
-            return _values[last]
-                + ((_values[last - 1] - _values[last]) * ((Math.Exp((place - last) * _step) - 1) / (Math.Exp(-_step) - 1)));
-        }
-
-        int first = Math.Clamp((int)place - 1, 0, last - 3);
+        double place = Place(exponential);
+        int first = Math.Clamp((int)place - 1, 0, _values.Length - 4);
         double t = place - first - 1;
         double back = t + 1;
         double one = t - 1;
@@ -61,4 +63,6 @@ internal sealed class SpotCurve
         return (((_values[first + 3] * back * t * one) - (_values[first] * t * one * two)) / 6)
             + (((_values[first + 1] * back * one * two) - (_values[first + 2] * back * t * two)) / 2);
     }
+
+    private double Place(double exponential) => (Math.Log(exponential) - _start) / _step;
 }
