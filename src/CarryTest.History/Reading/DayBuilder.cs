@@ -72,12 +72,10 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
             return FindingKind.Strike;
         }
 
-        foreach (double[] column in raw.Prices)
+        double[][] prices = raw.Prices;
+        if (prices[0][i] < 0 || prices[1][i] < 0 || prices[2][i] < 0 || prices[3][i] < 0 || prices[4][i] < 0 || prices[5][i] < 0)
         {
-            if (column[i] < 0)
-            {
-                return FindingKind.NegativePrice;
-            }
+            return FindingKind.NegativePrice;
         }
 
         if (raw.Expiry[i] < today)
@@ -169,7 +167,18 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
 
     private static double[] Quoted(double[] column, ReadOnlySpan<int> kept)
     {
-        var values = new double[kept.Length];
+        double[] values = new double[kept.Length];
+        if (WithoutGaps(kept))
+        {
+            ReadOnlySpan<double> source = column.AsSpan(kept[0], kept.Length);
+            for (int i = 0; i < values.Length; i++)
+            {
+                values[i] = Quote(source[i]);
+            }
+
+            return values;
+        }
+
         for (int i = 0; i < values.Length; i++)
         {
             values[i] = Quote(column[kept[i]]);
@@ -178,6 +187,8 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
         return values;
     }
 
+    private static bool WithoutGaps(ReadOnlySpan<int> kept) => kept.Length > 0 && kept[^1] - kept[0] == kept.Length - 1;
+
     private static int[]? Taken(int[]? column, ReadOnlySpan<int> kept)
     {
         if (column is null)
@@ -185,7 +196,13 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
             return null;
         }
 
-        var values = new int[kept.Length];
+        int[] values = new int[kept.Length];
+        if (WithoutGaps(kept))
+        {
+            column.AsSpan(kept[0], kept.Length).CopyTo(values);
+            return values;
+        }
+
         for (int i = 0; i < values.Length; i++)
         {
             values[i] = column[kept[i]];

@@ -1,5 +1,6 @@
 using System.Collections.Concurrent;
 using System.Collections.Immutable;
+using System.Globalization;
 using System.Security.Cryptography;
 using CarryTest.Market.Calendars;
 using CarryTest.Market.Contracts;
@@ -47,7 +48,8 @@ public sealed class HistoryFolder : IDisposable
         LastDay = choice.To is { } to && to < last ? to : last;
         if (FirstDay > LastDay)
         {
-            throw new InputException($"{folder}: holds {first:yyyy-MM-dd} to {last:yyyy-MM-dd}, none of which lies in the period chosen. Mend history.from and history.to.");
+            throw new InputException(string.Create(
+                CultureInfo.InvariantCulture, $"{folder}: holds {first:yyyy-MM-dd} to {last:yyyy-MM-dd}, none of which lies in the period chosen. Mend history.from and history.to."));
         }
 
         Files = Fingerprints(folder);
@@ -164,7 +166,9 @@ public sealed class HistoryFolder : IDisposable
 
     private TradingDay DayOf(DateOnly date)
     {
-        var byInstant = new SortedDictionary<DateTime, List<Chain>>();
+        SortedDictionary<DateTime, List<Chain>> byInstant = [];
+        List<(RootReader Root, List<(DateTime At, Chain Chain)> Chains)> quoted = [];
+        bool trades = Calendar.IsTradingDay(date);
         foreach (RootReader root in _roots)
         {
             List<(DateTime At, Chain Chain)> chains = root.Day(date);
@@ -178,34 +182,48 @@ public sealed class HistoryFolder : IDisposable
                 list.Add(chain);
             }
 
-            Rows += chains.Count == 0 ? 0 : chains[0].Chain.Columns.Count;
-            if (chains.Count == 0 && Calendar.IsTradingDay(date) && root.FirstDay <= date && root.LastDay >= date)
+            if (chains.Count > 0)
             {
-                _findings.Add(FindingKind.MissingRootDay, () => $"{root.Root.Root}, {date:yyyy-MM-dd}");
+                Rows += chains[0].Chain.Columns.Count;
+                quoted.Add((root, chains));
+            }
+            else if (trades && root.FirstDay <= date && root.LastDay >= date)
+            {
+                _findings.Add(FindingKind.MissingRootDay, () => string.Create(CultureInfo.InvariantCulture, $"{root.Root.Root}, {date:yyyy-MM-dd}"));
             }
         }
 
-        if (byInstant.Count == 0 && Calendar.IsTradingDay(date))
+        if (byInstant.Count == 0 && trades)
         {
-            _findings.Add(FindingKind.MissingDay, () => $"{date:yyyy-MM-dd}");
+            _findings.Add(FindingKind.MissingDay, () => string.Create(CultureInfo.InvariantCulture, $"{date:yyyy-MM-dd}"));
         }
 
-        CountMissingSnapshots(byInstant);
+        foreach ((RootReader root, List<(DateTime At, Chain Chain)> chains) in quoted)
+        {
+            CountMissingSnapshots(root, chains, byInstant.Keys);
+        }
+
         return new TradingDay(date, [.. byInstant.Select(s => new Snapshot(s.Key, [.. s.Value]))]);
     }
 
-    private void CountMissingSnapshots(SortedDictionary<DateTime, List<Chain>> byInstant)
+    private void CountMissingSnapshots(RootReader root, List<(DateTime At, Chain Chain)> chains, SortedDictionary<DateTime, List<Chain>>.KeyCollection instants)
     {
-        foreach (RootReader root in _roots)
+        if (chains.Count == instants.Count)
         {
-            bool some = byInstant.Values.Any(s => s.Any(c => c.Root.Root == root.Root.Root));
-            foreach ((DateTime at, List<Chain> chains) in byInstant)
+            return;
+        }
+
+        // Both ascend: an instant that is not the root's next one is one that it lacks.
+        int next = 0;
+        foreach (DateTime at in instants)
+        {
+            if (next < chains.Count && chains[next].At == at)
             {
-                if (some && chains.All(c => c.Root.Root != root.Root.Root))
-                {
-                    _findings.Add(FindingKind.MissingSnapshot, () => $"{root.Root.Root}, {at:yyyy-MM-ddTHH:mm:ssZ}");
-                }
+                next++;
+                continue;
             }
+
+            _findings.Add(FindingKind.MissingSnapshot, () => string.Create(CultureInfo.InvariantCulture, $"{root.Root.Root}, {at:yyyy-MM-ddTHH:mm:ssZ}"));
         }
     }
 
