@@ -27,6 +27,16 @@ internal static class ChainLayout
     public static readonly string[] Sizes = ["call_bid_size", "call_ask_size", "put_bid_size", "put_ask_size", "underlying_bid_size", "underlying_ask_size"];
     public static readonly string[] Required = [QuotedAt, Expiry, Strike, .. Prices];
 
+    /// <summary>Columns that the layout knows and a replay does not read.</summary>
+    public static readonly string[] Unread = ["call_volume", "put_volume", "call_open_interest", "put_open_interest"];
+
+    /// <summary>Stored units of a price in one unit of currency.</summary>
+    public const double PriceUnit = 10_000.0;
+
+    /// <summary>What a message about a file in another form ends with.</summary>
+    public const string Cure =
+        "`carrytest intake MAP --out HISTORY` will write such files in the right form; the command comes with a later version, and this one refuses it. Until then write the file as expected.";
+
     /// <summary>What a file says.</summary>
     public static readonly ParquetSchema Declared = new(
     [
@@ -46,6 +56,9 @@ internal static class ChainLayout
         .. Prices.Select(name => new DataField(name, typeof(int), isNullable: false)),
         .. Sizes.Select(name => new DataField(name, typeof(int), isNullable: false)),
     ]);
+
+    /// <summary>Whether the layout knows a column.</summary>
+    public static bool Knows(string column) => Required.Contains(column) || Sizes.Contains(column) || Unread.Contains(column);
 
     /// <summary>Days since 1970 of a date.</summary>
     public static int Days(DateOnly date) => date.DayNumber - DateOnly.FromDateTime(DateTime.UnixEpoch).DayNumber;

@@ -13,40 +13,54 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
     private static readonly TimeSpan AfterTheClose = TimeSpan.FromMinutes(15);
 
     /// <summary>The chains of a day, by instant.</summary>
-    /// <param name="file">for messages</param>
-    /// <param name="group">index of the row group</param>
-    /// <param name="raw">its rows</param>
-    /// <param name="from">first row of the day</param>
-    /// <param name="to">the row after its last</param>
+    /// <param name="part">the rows of the day, sorted</param>
     /// <param name="date">the day</param>
-    public List<(DateTime At, Chain Chain)> Build(string file, int group, RawGroup raw, int from, int to, DateOnly date)
+    public List<(DateTime At, Chain Chain)> Build(RawPart part, DateOnly date)
     {
-        var kept = new List<int>(to - from);
+        RawRows raw = part.Rows;
+        int[] kept = new int[part.Count];
+        int count = 0;
         int today = ChainLayout.Days(date);
-        bool trades = calendar.IsTradingDay(date);
-        (DateTime open, DateTime close) = trades ? calendar.RegularSession(date) : default;
-        long first = trades ? ChainLayout.Micros(open) : 0;
-        long last = trades ? ChainLayout.Micros(close + AfterTheClose) : 0;
-        for (int i = from; i < to; i++)
+        (long first, long last) = Session(date);
+        for (int i = part.From; i < part.To; i++)
         {
-            if (Fault(raw, i, from, kept, today, trades && raw.QuotedAt[i] >= first && raw.QuotedAt[i] <= last) is { } fault)
+            bool inSession = raw.QuotedAt[i] >= first && raw.QuotedAt[i] <= last;
+            int before = count > 0 ? kept[count - 1] : -1;
+            if (Fault(raw, i, i > part.From, before, today, inSession) is { } fault)
             {
-                Report(fault, file, group, i, raw);
+                Report(fault, raw, i);
                 continue;
             }
 
             if (Crossed(raw, i))
             {
-                findings.Add(FindingKind.Crossed, () => Place(file, group, i, raw));
+                Count(FindingKind.Crossed, raw, i);
             }
 
-            kept.Add(i);
+            kept[count++] = i;
         }
 
-        return Chains(raw, kept);
+        return Chains(raw, kept.AsSpan(0, count));
     }
 
-    private static FindingKind? Fault(RawGroup raw, int i, int from, List<int> kept, int today, bool inSession)
+    private (long First, long Last) Session(DateOnly date)
+    {
+        if (!calendar.IsTradingDay(date))
+        {
+            return (long.MaxValue, long.MinValue);
+        }
+
+        (DateTime open, DateTime close) = calendar.RegularSession(date);
+        return (ChainLayout.Micros(open), ChainLayout.Micros(close + AfterTheClose));
+    }
+
+    /// <param name="raw">all rows</param>
+    /// <param name="i">the row looked at</param>
+    /// <param name="hasPrevious">whether the row before it belongs to the day</param>
+    /// <param name="kept">the last row without a fault, -1 where there is none</param>
+    /// <param name="today">days since 1970</param>
+    /// <param name="inSession">whether the instant lies in the day's session</param>
+    private static FindingKind? Fault(RawRows raw, int i, bool hasPrevious, int kept, int today, bool inSession)
     {
         if (!inSession)
         {
@@ -58,12 +72,10 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
             return FindingKind.Strike;
         }
 
-        foreach (double[] column in raw.Prices)
+        double[][] prices = raw.Prices;
+        if (prices[0][i] < 0 || prices[1][i] < 0 || prices[2][i] < 0 || prices[3][i] < 0 || prices[4][i] < 0 || prices[5][i] < 0)
         {
-            if (column[i] < 0)
-            {
-                return FindingKind.NegativePrice;
-            }
+            return FindingKind.NegativePrice;
         }
 
         if (raw.Expiry[i] < today)
@@ -71,40 +83,41 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
             return FindingKind.Expired;
         }
 
-        if (i > from && raw.QuotedAt[i] == raw.QuotedAt[i - 1] && raw.Expiry[i] == raw.Expiry[i - 1] && raw.Strike[i] == raw.Strike[i - 1])
+        if (hasPrevious && raw.Compare(i, i - 1) == 0)
         {
             return FindingKind.DuplicateKey;
         }
 
-        if (kept.Count > 0 && raw.QuotedAt[kept[^1]] == raw.QuotedAt[i] && (raw.Prices[4][kept[^1]] != raw.Prices[4][i] || raw.Prices[5][kept[^1]] != raw.Prices[5][i]))
-        {
-            return FindingKind.UnderlyingDiffers;
-        }
-
-        return null;
+        // Quotes are compared as they were recorded, not as results of a computation.
+        bool differs = kept >= 0 && raw.QuotedAt[kept] == raw.QuotedAt[i] && (raw.Prices[4][kept] != raw.Prices[4][i] || raw.Prices[5][kept] != raw.Prices[5][i]);
+        return differs ? FindingKind.UnderlyingDiffers : null;
     }
 
-    private static bool Crossed(RawGroup raw, int i) =>
-        (raw.Prices[0][i] > raw.Prices[1][i] && raw.Prices[1][i] > 0) || (raw.Prices[2][i] > raw.Prices[3][i] && raw.Prices[3][i] > 0);
+    private static bool Crossed(RawRows raw, int i) =>
+        (raw.Prices[0][i] > raw.Prices[1][i] && raw.Prices[1][i] > 0)
+        || (raw.Prices[2][i] > raw.Prices[3][i] && raw.Prices[3][i] > 0)
+        || (raw.Prices[4][i] > raw.Prices[5][i] && raw.Prices[5][i] > 0);
 
-    private void Report(FindingKind fault, string file, int group, int row, RawGroup raw)
+    private void Report(FindingKind fault, RawRows raw, int row)
     {
-        findings.Add(fault, () => Place(file, group, row, raw));
+        Count(fault, raw, row);
         if (stopOnError)
         {
-            throw new InputException($"{Place(file, group, row, raw)}: {Market.Words.Vocabulary.Sentence(fault)}. Mend the row, or write history.on_error = \"quarantine\" to leave such rows out.");
+            throw new InputException($"{Place(raw, row)}: {Market.Words.Vocabulary.Sentence(fault)}. Mend the row, or write history.on_error = \"quarantine\" to leave such rows out.");
         }
     }
 
-    private static string Place(string file, int group, int row, RawGroup raw) => string.Create(
-        CultureInfo.InvariantCulture,
-        $"{file}, row group {group}, row {row}, {ChainLayout.Instant(raw.QuotedAt[row]):yyyy-MM-ddTHH:mm:ssZ} {ChainLayout.Date(raw.Expiry[row]):yyyy-MM-dd} {raw.Strike[row] / 1000m:0.###}");
+    private void Count(FindingKind kind, RawRows raw, int row) => findings.Add(kind, () => Place(raw, row));
 
-    private List<(DateTime At, Chain Chain)> Chains(RawGroup raw, List<int> kept)
+    private string Place(RawRows raw, int row) => string.Create(
+        CultureInfo.InvariantCulture,
+        $"{raw.PlaceOf(row)}, {root.Root} {ChainLayout.Date(raw.Expiry[row]):yyyy-MM-dd} {raw.Strike[row] / 1000m:0.###} at {ChainLayout.Instant(raw.QuotedAt[row]):yyyy-MM-ddTHH:mm:ssZ}");
+
+    private List<(DateTime At, Chain Chain)> Chains(RawRows raw, ReadOnlySpan<int> kept)
     {
         var columns = new StrikeColumns
         {
-            Count = kept.Count,
+            Count = kept.Length,
             Strike = Taken(raw.Strike, kept)!,
             CallBid = Quoted(raw.Prices[0], kept),
             CallAsk = Quoted(raw.Prices[1], kept),
@@ -117,14 +130,14 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
         };
         var chains = new List<(DateTime At, Chain Chain)>();
         int start = 0;
-        while (start < kept.Count)
+        while (start < kept.Length)
         {
             int end = start;
             var slices = ImmutableArray.CreateBuilder<ExpirySlice>();
-            while (end < kept.Count && raw.QuotedAt[kept[end]] == raw.QuotedAt[kept[start]])
+            while (end < kept.Length && raw.QuotedAt[kept[end]] == raw.QuotedAt[kept[start]])
             {
                 int first = end;
-                while (end < kept.Count && raw.QuotedAt[kept[end]] == raw.QuotedAt[kept[start]] && raw.Expiry[kept[end]] == raw.Expiry[kept[first]])
+                while (end < kept.Length && raw.QuotedAt[kept[end]] == raw.QuotedAt[kept[start]] && raw.Expiry[kept[end]] == raw.Expiry[kept[first]])
                 {
                     end++;
                 }
@@ -152,9 +165,20 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
 
     private static double Quote(double price) => price == 0 ? double.NaN : price;
 
-    private static double[] Quoted(double[] column, List<int> kept)
+    private static double[] Quoted(double[] column, ReadOnlySpan<int> kept)
     {
-        var values = new double[kept.Count];
+        double[] values = new double[kept.Length];
+        if (WithoutGaps(kept))
+        {
+            ReadOnlySpan<double> source = column.AsSpan(kept[0], kept.Length);
+            for (int i = 0; i < values.Length; i++)
+            {
+                values[i] = Quote(source[i]);
+            }
+
+            return values;
+        }
+
         for (int i = 0; i < values.Length; i++)
         {
             values[i] = Quote(column[kept[i]]);
@@ -163,14 +187,22 @@ internal sealed class DayBuilder(OptionRoot root, Underlying underlying, Trading
         return values;
     }
 
-    private static int[]? Taken(int[]? column, List<int> kept)
+    private static bool WithoutGaps(ReadOnlySpan<int> kept) => kept.Length > 0 && kept[^1] - kept[0] == kept.Length - 1;
+
+    private static int[]? Taken(int[]? column, ReadOnlySpan<int> kept)
     {
         if (column is null)
         {
             return null;
         }
 
-        var values = new int[kept.Count];
+        int[] values = new int[kept.Length];
+        if (WithoutGaps(kept))
+        {
+            column.AsSpan(kept[0], kept.Length).CopyTo(values);
+            return values;
+        }
+
         for (int i = 0; i < values.Length; i++)
         {
             values[i] = column[kept[i]];

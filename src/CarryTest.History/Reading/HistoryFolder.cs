@@ -1,5 +1,6 @@
 using System.Collections.Concurrent;
 using System.Collections.Immutable;
+using System.Globalization;
 using System.Security.Cryptography;
 using CarryTest.Market.Calendars;
 using CarryTest.Market.Contracts;
@@ -13,11 +14,12 @@ namespace CarryTest.History.Reading;
 public sealed class HistoryFolder : IDisposable
 {
     private const int DaysAhead = 2;
-    private readonly List<ChainFile> _files = [];
-    private readonly List<RootReader> _roots = [];
+    private readonly List<RootFiles> _files = [];
+    private readonly List<RootReader> _roots;
     private readonly List<string> _notes = [];
     private readonly FindingList _findings = new();
     private readonly HistoryChoice _choice;
+    private int _asked;
 
     private HistoryFolder(string folder, HistoryChoice choice)
     {
@@ -34,25 +36,20 @@ public sealed class HistoryFolder : IDisposable
         }
 
         ReferenceTables all = ReferenceReader.Read(folder, _notes);
-        try
-        {
-            OpenRoots(folder, chains, all);
-        }
-        catch
-        {
-            Dispose();
-            throw;
-        }
-
+        CheckChoice(folder, all);
+        CheckRoots(folder, chains, all);
+        NoteColumns();
+        _roots = [.. _files.Select(files => new RootReader(files, all.Calendar, _findings, choice.StopOnError))];
         Tables = OfChosen(all);
         Calendar = all.Calendar;
-        DateOnly first = _roots.Min(r => r.FirstDay) ?? throw Nothing(folder);
-        DateOnly last = _roots.Max(r => r.LastDay) ?? throw Nothing(folder);
+        DateOnly first = _files.Min(r => r.FirstDay) ?? throw Nothing(folder);
+        DateOnly last = _files.Max(r => r.LastDay) ?? throw Nothing(folder);
         FirstDay = choice.From is { } from && from > first ? from : first;
         LastDay = choice.To is { } to && to < last ? to : last;
         if (FirstDay > LastDay)
         {
-            throw new InputException($"{folder}: holds {first:yyyy-MM-dd} to {last:yyyy-MM-dd}, none of which lies in the period chosen. Mend history.from and history.to.");
+            throw new InputException(string.Create(
+                CultureInfo.InvariantCulture, $"{folder}: holds {first:yyyy-MM-dd} to {last:yyyy-MM-dd}, none of which lies in the period chosen. Mend history.from and history.to."));
         }
 
         Files = Fingerprints(folder);
@@ -90,8 +87,16 @@ public sealed class HistoryFolder : IDisposable
     /// The trading days in order, decoded ahead on another thread: every day of the calendar from first to last, one without rows with no snapshot.
     /// The arrays of a day stay valid as long as somebody holds it. To be called once.
     /// </summary>
+    /// <exception cref="InputException">a file cannot be decoded, or a row has an error and such rows are to end the reading</exception>
+    /// <exception cref="InvalidOperationException">it was called before: the findings would count twice</exception>
     public IEnumerable<TradingDay> Days(CancellationToken stop = default)
     {
+        if (Interlocked.Exchange(ref _asked, 1) != 0)
+        {
+            throw new InvalidOperationException("the days of a history are streamed once; open it again");
+        }
+
+        bool complete = false;
         using var ahead = new BlockingCollection<TradingDay>(DaysAhead);
         using var abandoned = CancellationTokenSource.CreateLinkedTokenSource(stop);
         Task decoding = Task.Run(() => Decode(ahead, abandoned.Token), CancellationToken.None);
@@ -101,6 +106,8 @@ public sealed class HistoryFolder : IDisposable
             {
                 yield return day;
             }
+
+            complete = true;
         }
         finally
         {
@@ -118,15 +125,19 @@ public sealed class HistoryFolder : IDisposable
             {
                 // The consumer went away first.
             }
+            catch (InputException) when (!complete)
+            {
+                // So it did here, and its own reason must not be hidden by what lay ahead.
+            }
         }
     }
 
     /// <inheritdoc/>
     public void Dispose()
     {
-        foreach (ChainFile file in _files)
+        foreach (RootReader root in _roots)
         {
-            file.Dispose();
+            root.Dispose();
         }
     }
 
@@ -155,7 +166,9 @@ public sealed class HistoryFolder : IDisposable
 
     private TradingDay DayOf(DateOnly date)
     {
-        var byInstant = new SortedDictionary<DateTime, List<Chain>>();
+        SortedDictionary<DateTime, List<Chain>> byInstant = [];
+        List<(RootReader Root, List<(DateTime At, Chain Chain)> Chains)> quoted = [];
+        bool trades = Calendar.IsTradingDay(date);
         foreach (RootReader root in _roots)
         {
             List<(DateTime At, Chain Chain)> chains = root.Day(date);
@@ -169,38 +182,52 @@ public sealed class HistoryFolder : IDisposable
                 list.Add(chain);
             }
 
-            Rows += chains.Count == 0 ? 0 : chains[0].Chain.Columns.Count;
-            if (chains.Count == 0 && Calendar.IsTradingDay(date) && root.FirstDay <= date && root.LastDay >= date)
+            if (chains.Count > 0)
             {
-                _findings.Add(FindingKind.MissingRootDay, () => $"{root.Root.Root}, {date:yyyy-MM-dd}");
+                Rows += chains[0].Chain.Columns.Count;
+                quoted.Add((root, chains));
+            }
+            else if (trades && root.FirstDay <= date && root.LastDay >= date)
+            {
+                _findings.Add(FindingKind.MissingRootDay, () => string.Create(CultureInfo.InvariantCulture, $"{root.Root.Root}, {date:yyyy-MM-dd}"));
             }
         }
 
-        if (byInstant.Count == 0 && Calendar.IsTradingDay(date))
+        if (byInstant.Count == 0 && trades)
         {
-            _findings.Add(FindingKind.MissingDay, () => $"{date:yyyy-MM-dd}");
+            _findings.Add(FindingKind.MissingDay, () => string.Create(CultureInfo.InvariantCulture, $"{date:yyyy-MM-dd}"));
         }
 
-        CountMissingSnapshots(byInstant);
+        foreach ((RootReader root, List<(DateTime At, Chain Chain)> chains) in quoted)
+        {
+            CountMissingSnapshots(root, chains, byInstant.Keys);
+        }
+
         return new TradingDay(date, [.. byInstant.Select(s => new Snapshot(s.Key, [.. s.Value]))]);
     }
 
-    private void CountMissingSnapshots(SortedDictionary<DateTime, List<Chain>> byInstant)
+    private void CountMissingSnapshots(RootReader root, List<(DateTime At, Chain Chain)> chains, SortedDictionary<DateTime, List<Chain>>.KeyCollection instants)
     {
-        foreach (RootReader root in _roots)
+        if (chains.Count == instants.Count)
         {
-            bool some = byInstant.Values.Any(s => s.Any(c => c.Root.Root == root.Root.Root));
-            foreach ((DateTime at, List<Chain> chains) in byInstant)
+            return;
+        }
+
+        // Both ascend: an instant that is not the root's next one is one that it lacks.
+        int next = 0;
+        foreach (DateTime at in instants)
+        {
+            if (next < chains.Count && chains[next].At == at)
             {
-                if (some && chains.All(c => c.Root.Root != root.Root.Root))
-                {
-                    _findings.Add(FindingKind.MissingSnapshot, () => $"{root.Root.Root}, {at:yyyy-MM-ddTHH:mm:ssZ}");
-                }
+                next++;
+                continue;
             }
+
+            _findings.Add(FindingKind.MissingSnapshot, () => string.Create(CultureInfo.InvariantCulture, $"{root.Root.Root}, {at:yyyy-MM-ddTHH:mm:ssZ}"));
         }
     }
 
-    private void OpenRoots(string folder, string chains, ReferenceTables all)
+    private void CheckRoots(string folder, string chains, ReferenceTables all)
     {
         const string Prefix = "root=";
         foreach (string path in Directory.GetDirectories(chains).OrderBy(p => Path.GetFileName(p), StringComparer.Ordinal))
@@ -217,20 +244,47 @@ public sealed class HistoryFolder : IDisposable
                 continue;
             }
 
-            var files = new List<(ChainFile File, string Name)>();
-            foreach (string file in Directory.GetFileSystemEntries(path, "*.parquet").OrderBy(p => p, StringComparer.Ordinal))
-            {
-                ChainFile opened = ChainFile.Open(file);
-                _files.Add(opened);
-                files.Add((opened, Path.GetRelativePath(folder, file).Replace('\\', '/')));
-            }
-
-            _roots.Add(new RootReader(root, all.UnderlyingOf(root.Symbol), all.Calendar, files, _findings, _choice.StopOnError));
+            RootFile[] files =
+            [
+                .. Directory.GetFileSystemEntries(path, "*.parquet").Order(StringComparer.Ordinal)
+                    .Select(file => new RootFile(file, Path.GetRelativePath(folder, file).Replace('\\', '/'))),
+            ];
+            _files.Add(new RootFiles(root, all.UnderlyingOf(root.Symbol), files));
         }
 
-        if (_roots.Count == 0)
+        if (_files.Count == 0)
         {
             throw Nothing(folder);
+        }
+    }
+
+    private void CheckChoice(string folder, ReferenceTables all)
+    {
+        foreach (string glob in _choice.Underlyings)
+        {
+            if (!all.Underlyings.Any(u => new HistoryChoice([glob]).Wants(u.Symbol)))
+            {
+                throw new InputException(
+                    $"{folder}: no underlying is called {glob}; the table underlyings has {string.Join(", ", all.Underlyings.Select(u => u.Symbol).Order(StringComparer.Ordinal))}. Mend history.underlyings.");
+            }
+        }
+    }
+
+    private void NoteColumns()
+    {
+        string[] extra = [.. _files.SelectMany(f => f.Extra).Distinct().Order(StringComparer.Ordinal)];
+        if (extra.Length > 0)
+        {
+            _notes.Add($"Columns of chain files that are not read: {string.Join(", ", extra)}.");
+        }
+
+        foreach (string column in ChainLayout.Sizes)
+        {
+            string[] roots = [.. _files.Where(f => f.Absent.Contains(column)).Select(f => f.Root.Root)];
+            if (roots.Length > 0)
+            {
+                _notes.Add($"Chain files without the optional column {column}: {(roots.Length == _files.Count ? "all roots" : string.Join(", ", roots))}; no size is shown there.");
+            }
         }
     }
 
@@ -251,7 +305,7 @@ public sealed class HistoryFolder : IDisposable
     {
         string reference = Path.Combine(folder, "reference");
         string[] tables = [.. Directory.GetFiles(reference).Where(f => f.EndsWith(".csv", StringComparison.Ordinal) || f.EndsWith(".parquet", StringComparison.Ordinal))];
-        return [.. _files.Select(f => f.Path).Concat(tables)
+        return [.. _files.SelectMany(f => f.Files).Select(f => f.Path).Concat(tables)
             .Select(path => (Name: Path.GetRelativePath(folder, path).Replace('\\', '/'), Path: path))
             .OrderBy(f => f.Name, StringComparer.Ordinal)
             .Select(f => Fingerprint(f.Name, f.Path))];

@@ -1,127 +1,134 @@
 using CarryTest.Market.Calendars;
 using CarryTest.Market.Contracts;
-using CarryTest.Market.Faults;
 using CarryTest.Market.Quotes;
 
 namespace CarryTest.History.Reading;
 
-/// <summary>Streams the days of one root from its files, one row group at a time.</summary>
-internal sealed class RootReader
+/// <summary>
+/// Streams the days of one root. Files may be given in any order and split anywhere, a day included; a row group is decoded when its first day is asked for and let go after its last,
+/// and a file is open only in between.
+/// </summary>
+internal sealed class RootReader : IDisposable
 {
-    private readonly List<(ChainFile File, string Name, int Group, DateOnly First, DateOnly Last)> _groups;
+    private readonly RootFiles _files;
     private readonly DayBuilder _builder;
+    private readonly List<OpenGroup> _open = [];
+    private readonly Dictionary<int, (ChainFile File, int GroupsLeft)> _openFiles = [];
     private int _next;
-    private RawGroup? _raw;
-    private int _at;
-    private (long At, int Expiry, int Strike) _lastKey = (long.MinValue, 0, 0);
 
-    public RootReader(OptionRoot root, Underlying underlying, TradingCalendar calendar, IReadOnlyList<(ChainFile File, string Name)> files, FindingList findings, bool stopOnError)
+    public RootReader(RootFiles files, TradingCalendar calendar, FindingList findings, bool stopOnError)
     {
-        Root = root;
-        _builder = new DayBuilder(root, underlying, calendar, findings, stopOnError);
-        _groups = [];
-        foreach ((ChainFile file, string name) in files)
-        {
-            for (int g = 0; g < file.Groups; g++)
-            {
-                (DateOnly First, DateOnly Last) days = file.DaysOf(g) ?? DaysByReading(file, g);
-                _groups.Add((file, name, g, days.First, days.Last));
-            }
-        }
-
-        // Files may be given in any order and split anywhere between days.
-        _groups.Sort((a, b) => (a.First, a.Last, a.Group).CompareTo((b.First, b.Last, b.Group)));
-        for (int i = 1; i < _groups.Count; i++)
-        {
-            if (_groups[i].First <= _groups[i - 1].Last)
-            {
-                throw new InputException(
-                    $"{_groups[i].Name}, row group {_groups[i].Group}: begins on {_groups[i].First:yyyy-MM-dd}, which {_groups[i - 1].Name}, row group {_groups[i - 1].Group} holds already. " +
-                    "A row group holds whole trading days and each day stands in one of them: sort the rows by quoted_at, expiry, strike and write them again.");
-            }
-        }
+        _files = files;
+        _builder = new DayBuilder(files.Root, files.Underlying, calendar, findings, stopOnError);
     }
 
-    public OptionRoot Root { get; }
+    public OptionRoot Root => _files.Root;
 
-    public DateOnly? FirstDay => _groups.Count == 0 ? null : _groups[0].First;
+    public DateOnly? FirstDay => _files.FirstDay;
 
-    public DateOnly? LastDay => _groups.Count == 0 ? null : _groups[^1].Last;
+    public DateOnly? LastDay => _files.LastDay;
 
     /// <summary>The chains of a day; days are asked for in ascending order. Empty where the root has no rows on it.</summary>
     public List<(DateTime At, Chain Chain)> Day(DateOnly date)
     {
-        while (true)
+        OpenGroups(date);
+        if (_open.Count == 0)
         {
-            if (_raw is null)
+            return [];
+        }
+
+        long start = ChainLayout.Micros(TradingCalendar.ToUtc(date, TimeOnly.MinValue));
+        long end = ChainLayout.Micros(TradingCalendar.ToUtc(date.AddDays(1), TimeOnly.MinValue));
+        List<RawPart> parts = [];
+        foreach (OpenGroup group in _open)
+        {
+            if (group.Take(start, end) is { Count: > 0 } part)
             {
-                while (_next < _groups.Count && _groups[_next].Last < date)
-                {
-                    _next++;
-                }
+                parts.Add(part);
+            }
+        }
 
-                if (_next == _groups.Count || _groups[_next].First > date)
-                {
-                    return [];
-                }
+        _open.RemoveAll(group => group.Finished);
+        return parts.Count switch
+        {
+            0 => [],
+            1 => _builder.Build(parts[0], date),
+            _ => BuildJoined(parts, date),
+        };
+    }
 
-                _raw = _groups[_next].File.Read(_groups[_next].Group);
-                _at = 0;
+    public void Dispose()
+    {
+        foreach ((ChainFile file, _) in _openFiles.Values)
+        {
+            file.Dispose();
+        }
+
+        _openFiles.Clear();
+    }
+
+    private List<(DateTime At, Chain Chain)> BuildJoined(List<RawPart> parts, DateOnly date)
+    {
+        RawRows joined = RawRows.Join(parts);
+        return _builder.Build(new RawPart(joined, 0, joined.Count), date);
+    }
+
+    private void OpenGroups(DateOnly date)
+    {
+        while (_next < _files.Groups.Count && _files.Groups[_next].First <= date)
+        {
+            RootGroup group = _files.Groups[_next++];
+            if (group.Last >= date)
+            {
+                _open.Add(new OpenGroup(Decode(group)));
+            }
+        }
+    }
+
+    private RawRows Decode(RootGroup group)
+    {
+        if (!_openFiles.TryGetValue(group.File, out (ChainFile File, int GroupsLeft) open))
+        {
+            RootFile file = _files.Files[group.File];
+            open = (ChainFile.Open(file.Path, file.Name), _files.Groups.Skip(_next - 1).Count(g => g.File == group.File));
+        }
+
+        RawRows rows = open.File.Read(group.Group);
+        open.GroupsLeft--;
+        if (open.GroupsLeft > 0)
+        {
+            _openFiles[group.File] = open;
+        }
+        else
+        {
+            _openFiles.Remove(group.File);
+            open.File.Dispose();
+        }
+
+        return rows;
+    }
+
+    private sealed class OpenGroup(RawRows rows)
+    {
+        private int _at;
+
+        public bool Finished => _at == rows.Count;
+
+        /// <summary>The rows of a day; rows before it, of days that were not chosen, are passed over.</summary>
+        public RawPart Take(long start, long end)
+        {
+            while (_at < rows.Count && rows.QuotedAt[_at] < start)
+            {
+                _at++;
             }
 
             int from = _at;
-            while (from < _raw.Rows && DateOf(from) < date)
+            while (_at < rows.Count && rows.QuotedAt[_at] < end)
             {
-                CheckOrder(from);
-                from++;
+                _at++;
             }
 
-            int to = from;
-            while (to < _raw.Rows && DateOf(to) == date)
-            {
-                CheckOrder(to);
-                to++;
-            }
-
-            List<(DateTime At, Chain Chain)> chains = to > from ? _builder.Build(_groups[_next].Name, _groups[_next].Group, _raw, from, to, date) : [];
-            _at = to;
-            if (to < _raw.Rows)
-            {
-                return chains;
-            }
-
-            _raw = null;
-            _next++;
-            if (to > from)
-            {
-                return chains;
-            }
+            return new RawPart(rows, from, _at);
         }
-    }
-
-    private static (DateOnly First, DateOnly Last) DaysByReading(ChainFile file, int group)
-    {
-        RawGroup raw = file.Read(group);
-        if (raw.Rows == 0)
-        {
-            throw new InputException($"{file.Path}, row group {group}: holds no rows. Write the file again.");
-        }
-
-        return (TradingCalendar.LocalDate(ChainLayout.Instant(raw.QuotedAt.Min())), TradingCalendar.LocalDate(ChainLayout.Instant(raw.QuotedAt.Max())));
-    }
-
-    private DateOnly DateOf(int row) => TradingCalendar.LocalDate(ChainLayout.Instant(_raw!.QuotedAt[row]));
-
-    private void CheckOrder(int row)
-    {
-        (long At, int Expiry, int Strike) key = (_raw!.QuotedAt[row], _raw.Expiry[row], _raw.Strike[row]);
-        if (key.CompareTo(_lastKey) < 0)
-        {
-            throw new InputException(
-                $"{_groups[_next].Name}, row group {_groups[_next].Group}, row {row}: is not sorted; {ChainLayout.Instant(key.At):yyyy-MM-ddTHH:mm:ssZ} {ChainLayout.Date(key.Expiry):yyyy-MM-dd} " +
-                $"{key.Strike / 1000m} comes after a later row. Sort the rows by quoted_at, expiry, strike and write them again.");
-        }
-
-        _lastKey = key;
     }
 }

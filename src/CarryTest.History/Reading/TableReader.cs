@@ -82,7 +82,7 @@ internal static class TableReader
 
     private static List<TableRow> Csv(string path, string[] required)
     {
-        var configuration = new CsvConfiguration(CultureInfo.InvariantCulture) { TrimOptions = TrimOptions.Trim, DetectDelimiter = false, Delimiter = ",", BadDataFound = null };
+        var configuration = new CsvConfiguration(CultureInfo.InvariantCulture) { TrimOptions = TrimOptions.Trim, DetectDelimiter = false, Delimiter = "," };
         using var reader = new CsvReader(new StreamReader(path), configuration);
         if (!reader.Read() || !reader.ReadHeader() || reader.HeaderRecord is not { } header)
         {
@@ -95,10 +95,16 @@ internal static class TableReader
         {
             while (reader.Read())
             {
+                if (reader.Parser.Count != header.Length)
+                {
+                    throw new InputException(
+                        $"{path}, row {reader.Parser.Row}: has {reader.Parser.Count} cells, the header {header.Length}. Mend the row; a decimal comma, or a comma in a text without quotes, is the usual cause.");
+                }
+
                 var cells = new Dictionary<string, string>();
                 for (int i = 0; i < header.Length; i++)
                 {
-                    cells[header[i]] = reader.TryGetField(i, out string? cell) ? cell ?? "" : "";
+                    cells[header[i]] = reader.Parser[i];
                 }
 
                 rows.Add(new TableRow(path, reader.Context.Parser!.Row, cells));
@@ -117,7 +123,7 @@ internal static class TableReader
         FooterGuard.Check(path);
         try
         {
-            using FileStream stream = File.OpenRead(path);
+            using EndingStream stream = new(path);
             IList<Dictionary<string, string>> table = ReadAll(stream, path, required).GetAwaiter().GetResult();
             return [.. table.Select((cells, i) => new TableRow(path, i + 1, cells))];
         }
@@ -156,7 +162,7 @@ internal static class TableReader
 
     private static async Task<string[]> Column(ParquetRowGroupReader group, DataField field)
     {
-        if (field.ClrType == typeof(string))
+        if (field.ClrType == typeof(string) || field.ClrType == typeof(ReadOnlyMemory<char>))
         {
             var texts = new string?[group.RowCount];
             await group.ReadAsync(field, texts.AsMemory()).ConfigureAwait(false);
@@ -172,10 +178,15 @@ internal static class TableReader
             Type t when t == typeof(long) => await Cells<long>(group, field, v => v.ToString(CultureInfo.InvariantCulture)).ConfigureAwait(false),
             Type t when t == typeof(bool) => await Cells<bool>(group, field, v => v ? "true" : "false").ConfigureAwait(false),
             Type t when t == typeof(DateOnly) => await Cells<DateOnly>(group, field, v => v.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture)).ConfigureAwait(false),
-            Type t when t == typeof(DateTime) => await Cells<DateTime>(group, field, v => v.ToString(v.TimeOfDay == TimeSpan.Zero ? "yyyy-MM-dd" : "yyyy-MM-ddTHH:mm:ss.ffffffZ", CultureInfo.InvariantCulture)).ConfigureAwait(false),
+            Type t when t == typeof(DateTime) => await Cells<DateTime>(group, field, v => TextOf(v, field)).ConfigureAwait(false),
             _ => throw new InvalidDataException($"column {field.Name} has type {field.ClrType.Name}"),
         };
     }
+
+    // A timestamp without a zone stays without one, so that it is refused where an instant is wanted.
+    private static string TextOf(DateTime value, DataField field) => field is DateTimeDataField { DateTimeFormat: DateTimeFormat.Date }
+        ? value.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture)
+        : value.ToString("yyyy-MM-dd'T'HH:mm:ss.ffffff", CultureInfo.InvariantCulture) + (field is DateTimeDataField { IsAdjustedToUTC: true } ? "Z" : "");
 
     private static async Task<string[]> Cells<T>(ParquetRowGroupReader group, DataField field, Func<T, string> text)
         where T : struct

@@ -45,7 +45,8 @@ public sealed class ChainFileWriter : IDisposable
         (long At, int Expiry, int Strike) key = (ChainLayout.Micros(row.QuotedAt), ChainLayout.Days(row.Expiry), row.Strike);
         if (key.CompareTo(_lastKey) <= 0)
         {
-            throw new ArgumentException($"row {row.QuotedAt:O} {row.Expiry:yyyy-MM-dd} {row.Strike} is not after the row before it", nameof(row));
+            throw new ArgumentException(
+                string.Create(System.Globalization.CultureInfo.InvariantCulture, $"row {row.QuotedAt:O} {row.Expiry:yyyy-MM-dd} {row.Strike} is not after the row before it"), nameof(row));
         }
 
         CheckPrices(row);
@@ -149,7 +150,12 @@ public sealed class ChainFileWriter : IDisposable
         where T : struct
     {
         DataField field = ChainLayout.Raw.DataFields[column];
-        T[] values = [.. _group.Select(valueOf)];
+        T[] values = new T[_group.Count];
+        for (int row = 0; row < values.Length; row++)
+        {
+            values[row] = valueOf(_group[row]);
+        }
+
         group.WriteAsync<T>(field, values.AsMemory()).GetAwaiter().GetResult();
     }
 }

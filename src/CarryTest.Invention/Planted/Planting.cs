@@ -88,7 +88,7 @@ internal static class Planting
             ("BRAMWELL", new(2025, 3, 11), new(2025, 6, 20), 95, 105, PlantKind.LongBox, 0.16),
             ("BRAMWELL", new(2025, 3, 18), new(2025, 6, 20), 97.5, 107.5, PlantKind.ShortBox, 0.20),
             ("CORVANE", new(2025, 2, 18), new(2025, 3, 21), 60, 60, PlantKind.Conversion, 0.16),
-            ("DUNMORIA", new(2025, 6, 3), new(2025, 6, 20), 145, 145, PlantKind.Conversion, 0.24),
+            ("CORVANE", new(2025, 6, 3), new(2025, 6, 20), 60, 60, PlantKind.Conversion, 0.24),
             ("ELSINGER", new(2025, 5, 20), new(2025, 9, 19), 80, 80, PlantKind.Reversal, 0.20),
             ("ELSINGER", new(2025, 5, 22), new(2025, 9, 19), 77.5, 77.5, PlantKind.Reversal, 0.17),
             ("ELSINGER", new(2025, 5, 27), new(2025, 9, 19), 75, 85, PlantKind.LongBox, 0.18),

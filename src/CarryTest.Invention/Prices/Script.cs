@@ -15,29 +15,22 @@ internal static class Script
     /// <summary>The names of the demonstration year.</summary>
     public static ImmutableArray<NameScript> Names =>
     [
-        // A payer that rallies by a quarter before its May ex-date, so that calls sold in winter are exercised on its eve.
+        // A payer that rallies by a quarter before its May ex-date, so that calls sold in winter are exercised on its eve; it raises in August.
         new NameScript
         {
             Symbol = "BRAMWELL", Name = "Bramwell Looms", Start = 101, Volatility = 0.24,
             Anchors = [On(2025, 3, 31, 104), On(2025, 5, 13, 131), On(2025, 8, 29, 126), On(2025, 12, 31, 133)],
-            Dividends = Quarterly(new DateOnly(2023, 2, 15), 0.95, []),
+            Dividends = Quarterly(new DateOnly(2023, 2, 15), 0.95, [(new DateOnly(2025, 8, 15), 1.10)]),
         },
 
-        // A payer that cuts in August; the chain knows eight trading days before the declaration. It closes two cents from a strike in March.
+        // A payer whose June ex-date is an expiry day and whose September ex-date is the Monday after one, for which it cuts; the chain knows eight trading days before the
+        // declaration. It closes two cents from a strike in March.
         new NameScript
         {
             Symbol = "CORVANE", Name = "Corvane Basalt", Start = 61, Volatility = 0.27,
             Anchors = [On(2025, 3, 21, 60.02), On(2025, 8, 1, 63), On(2025, 8, 12, 57.5), On(2025, 12, 31, 58)],
             Closes = [On(2025, 3, 21, 60.02)],
-            Dividends = Quarterly(new DateOnly(2023, 3, 20), 0.52, [(new DateOnly(2025, 9, 22), 0.22)], knowsBefore: 8, exOn: [(10, new DateOnly(2025, 9, 22))]),
-        },
-
-        // A payer that raises in April and whose June ex-date is an expiry day.
-        new NameScript
-        {
-            Symbol = "DUNMORIA", Name = "Dunmoria Glassworks", Start = 142, Volatility = 0.22, StrikeStep = 5, FineTicks = false, HalfSpread = 0.05,
-            Anchors = [On(2025, 6, 20, 147), On(2025, 12, 31, 156)],
-            Dividends = Quarterly(new DateOnly(2023, 3, 21), 0.60, [(new DateOnly(2025, 6, 20), 0.78)], exOn: [(9, new DateOnly(2025, 6, 20))]),
+            Dividends = Quarterly(new DateOnly(2023, 3, 6), 0.52, [(new DateOnly(2025, 9, 22), 0.22)], knowsBefore: 8, exOn: [(9, new DateOnly(2025, 6, 20)), (10, new DateOnly(2025, 9, 22))]),
         },
 
         // No dividends; it falls by two fifths over the summer, so that puts sold against short stock are exercised early.
@@ -64,7 +57,7 @@ internal static class Script
             Symbol = "GALANTRA", Name = "Galantra Broad Fund", Kind = UnderlyingKind.Fund, Start = 224, Volatility = 0.15, StrikeStep = 5, HalfSpread = 0.03,
             Anchors = [On(2025, 4, 8, 202), On(2025, 7, 18, 235.02), On(2025, 12, 31, 246)],
             Closes = [On(2025, 7, 18, 235.02)],
-            Dividends = Quarterly(new DateOnly(2023, 3, 17), 0.70, [], season: [0.70, 0.82, 0.76, 0.98]),
+            Dividends = Quarterly(new DateOnly(2023, 4, 3), 0.70, [], season: [0.70, 0.82, 0.76, 0.98]),
         },
         new NameScript
         {
@@ -84,7 +77,7 @@ internal static class Script
         string[] first = ["AL", "BRO", "CAR", "DEL", "ES", "FAR", "GRE", "HAL", "IN", "JOR"];
         string[] middle = ["BO", "DA", "FE", "GU", "LI", "MO", "NA", "PE", "RI", "SO"];
         string[] last = ["DAX", "KORN", "LINT", "MERE", "NOCK", "PELL", "RAST", "SUND", "TARN", "VOLE"];
-        NameScript model = Names[number % 5];
+        NameScript model = Names[number % 4];
         string symbol = first[number % 10] + middle[number / 10 % 10] + last[number / 100 % 10] + (number >= 1000 ? "X" + (char)('A' + (number / 1000 % 26)) : "");
         return model with { Symbol = symbol, Name = symbol[..1] + symbol[1..].ToLowerInvariant(), Anchors = [], Closes = [] };
     }

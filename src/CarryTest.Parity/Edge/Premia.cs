@@ -9,13 +9,71 @@ using CarryTest.Pricing.Volatility;
 
 namespace CarryTest.Parity.Edge;
 
-/// <summary>What the early-exercise premium of an option depends on, beside its contract.</summary>
-/// <param name="Chain">the quotes</param>
-/// <param name="Label">the expiry date that the contract carries</param>
-/// <param name="Dates">the dates of a trade today</param>
-/// <param name="Dividends">expected, ex-dates after today</param>
-/// <param name="Benchmark">the benchmark as known now</param>
-public readonly record struct PremiumSetting(Chain Chain, DateOnly Label, ExpiryTerms Dates, ImmutableArray<ExpectedDividend> Dividends, IFunding Benchmark);
+/// <summary>What the early-exercise premium of an option depends on, beside its contract: one expiry of one chain at one snapshot.</summary>
+public sealed class PremiumSetting
+{
+    private const double DaysOfYear = 365;
+
+    /// <summary>Prepares the market of an expiry.</summary>
+    /// <param name="chain">the quotes</param>
+    /// <param name="label">the expiry date that the contracts carry</param>
+    /// <param name="dates">the dates of a trade today</param>
+    /// <param name="dividends">expected, ex-dates after today</param>
+    /// <param name="benchmark">the benchmark as known now</param>
+    public PremiumSetting(Chain chain, DateOnly label, ExpiryTerms dates, ImmutableArray<ExpectedDividend> dividends, IFunding benchmark)
+    {
+        Chain = chain;
+        Label = label;
+        TradedOn = dates.TradedOn;
+        Years = Math.Max(dates.DaysToExpiry, 0) / DaysOfYear;
+        Discount = benchmark.Discount(dates.PremiumSettles, dates.DeliverySettles, Side.Credit);
+        Rate = Years > 0 ? -Math.Log(Discount) / Years : 0;
+        var cash = new List<CashDividend>();
+        ulong print = 14695981039346656037;
+        foreach (ExpectedDividend dividend in dividends)
+        {
+            if (dividend.Adjusts || dividend.ExOn <= dates.TradedOn || dividend.ExOn > dates.Expiry)
+            {
+                continue;
+            }
+
+            double atEx = dividend.Amount * benchmark.Discount(dividend.ExOn, dividend.CashOn, Side.Credit);
+            cash.Add(new CashDividend((dividend.ExOn.DayNumber - dates.TradedOn.DayNumber) / DaysOfYear, atEx));
+            DateOnly cashOn = dividend.CashOn > dates.PremiumSettles ? dividend.CashOn : dates.PremiumSettles;
+            DividendsWorth += dividend.Amount * benchmark.Discount(dates.PremiumSettles, cashOn, Side.Credit);
+            print = Mixed(Mixed(print, (ulong)dividend.ExOn.DayNumber), BitConverter.DoubleToUInt64Bits(atEx));
+        }
+
+        Dividends = [.. cash];
+        Fingerprint = print;
+        Spot = chain.UnderlyingMid;
+        Forward = (Spot - DividendsWorth) / Discount;
+    }
+
+    internal Chain Chain { get; }
+
+    internal DateOnly Label { get; }
+
+    internal DateOnly TradedOn { get; }
+
+    internal double Spot { get; }
+
+    internal double Years { get; }
+
+    internal double Rate { get; }
+
+    internal double Discount { get; }
+
+    internal double DividendsWorth { get; }
+
+    internal double Forward { get; }
+
+    internal CashDividend[] Dividends { get; }
+
+    internal ulong Fingerprint { get; }
+
+    private static ulong Mixed(ulong hash, ulong value) => unchecked((hash ^ value) * 1099511628211);
+}
 
 /// <summary>
 /// A: the value of an option with the right to exercise early less its value without, both from one grid, at the volatility of its pair's out-of-the-money option and the benchmark rate.
@@ -23,11 +81,10 @@ public readonly record struct PremiumSetting(Chain Chain, DateOnly Label, Expiry
 /// </summary>
 public sealed class Premia
 {
-    private const double DaysOfYear = 365;
     private const double VolatilityStep = 0.001;
     private const double Below = 0.85;
     private const double Above = 1.15;
-    private static readonly GridSize Grid = GridSize.Standard;
+    private static readonly GridSize Grid = GridSize.Fast;
 
     private readonly ConcurrentDictionary<GridKey, AmericanSolution> _solved = new();
     private long _grids;
@@ -47,20 +104,19 @@ public sealed class Premia
             return (0, 0);
         }
 
-        Market market = MarketOf(setting);
         double strike = chain.Columns.Strike[row] / 1000.0;
-        if (right == Right.Call && market.Dividends.Length == 0 && market.Rate >= 0)
+        if (right == Right.Call && setting.Dividends.Length == 0 && setting.Rate >= 0)
         {
             return (0, 0);
         }
 
-        double most = PremiumBounds.Upper(Of(right), strike, market.Years, market.Rate, market.Dividends);
+        double most = PremiumBounds.Upper(Of(right), strike, setting.Years, setting.Rate, setting.Dividends);
         Touch other = chain.Option(row, right == Right.Call ? Right.Put : Right.Call);
-        double parity = market.Spot - market.DividendsWorth - (strike * market.Discount);
+        double parity = setting.Spot - setting.DividendsWorth - (strike * setting.Discount);
 
         // Worth without the right: at most parity from the ask of the other option.
         double european = other.Ask + (right == Right.Call ? parity : -parity);
-        double least = double.IsNaN(european) ? 0 : PremiumBounds.Lower(Of(right), market.Spot, strike, Math.Max(european, 0));
+        double least = double.IsNaN(european) ? 0 : PremiumBounds.Lower(Of(right), setting.Spot, strike, Math.Max(european, 0));
         return (Math.Min(least, most), most);
     }
 
@@ -76,58 +132,51 @@ public sealed class Premia
             return 0;
         }
 
-        Market market = MarketOf(setting);
-        if (right == Right.Call && market.Dividends.Length == 0 && market.Rate >= 0)
+        if (right == Right.Call && setting.Dividends.Length == 0 && setting.Rate >= 0)
         {
             return 0;
         }
 
-        double volatility = VolatilityAt(setting, market, row);
-        return Of(chain.Root.Root, setting.Label, chain.Columns.Strike[row], right, market, volatility, setting.Dates.TradedOn);
+        double volatility = VolatilityAt(setting, row);
+        AmericanSolution solution = Solve(setting, chain.Columns.Strike[row], right, volatility);
+        return Math.Max(0, solution.Premium(Math.Clamp(setting.Spot, solution.SpotLow, solution.SpotHigh)));
     }
 
     /// <summary>A of an at-the-money option of an expiry as a function of moneyness: A(K) is taken as K/S of the premium of a strike at S with the stock at S S/K. For tests that need many strikes at once.</summary>
     public Func<double, double> AcrossStrikes(PremiumSetting setting, ExpirySlice slice, Right right)
     {
         Chain chain = setting.Chain;
-        Market market = MarketOf(setting);
-        if (chain.Root.Exercise == ExerciseStyle.European || (right == Right.Call && market.Dividends.Length == 0 && market.Rate >= 0))
+        if (chain.Root.Exercise == ExerciseStyle.European || (right == Right.Call && setting.Dividends.Length == 0 && setting.Rate >= 0))
         {
             return _ => 0;
         }
 
-        int nearest = Nearest(chain, slice, market.Spot);
-        double volatility = VolatilityAt(setting, market, nearest);
+        int nearest = Nearest(chain, slice, setting.Spot);
+        double volatility = VolatilityAt(setting, nearest);
         int strike = chain.Columns.Strike[nearest];
-        AmericanSolution solution = Solve(chain.Root.Root, setting.Label, strike, right, market, volatility, setting.Dates.TradedOn);
+        AmericanSolution solution = Solve(setting, strike, right, volatility);
         double at = strike / 1000.0;
-        return k => Math.Max(0, solution.Premium(Math.Clamp(market.Spot * at / k, solution.SpotLow, solution.SpotHigh)) * k / at);
+        return k => Math.Max(0, solution.Premium(Math.Clamp(setting.Spot * at / k, solution.SpotLow, solution.SpotHigh)) * k / at);
     }
 
     private static OptionRight Of(Right right) => right == Right.Call ? OptionRight.Call : OptionRight.Put;
 
-    private double Of(string root, DateOnly label, int strike, Right right, Market market, double volatility, DateOnly today)
-    {
-        AmericanSolution solution = Solve(root, label, strike, right, market, volatility, today);
-        double spot = Math.Clamp(market.Spot, solution.SpotLow, solution.SpotHigh);
-        return Math.Max(0, solution.Premium(spot));
-    }
-
     // The range of spots is a function of the strike and of a coarse grid of spots, so that a solution does not depend on which spot asked first.
-    private AmericanSolution Solve(string root, DateOnly label, int strike, Right right, Market market, double volatility, DateOnly today)
+    private AmericanSolution Solve(PremiumSetting setting, int strike, Right right, double volatility)
     {
-        double centre = Math.Exp(Math.Round(Math.Log(market.Spot) * 20) / 20);
-        var key = new GridKey(root, label, strike, right, (int)Math.Round(volatility / VolatilityStep), centre, market.Rate, market.Fingerprint, today);
+        double centre = Math.Exp(Math.Round(Math.Log(setting.Spot) * 20) / 20);
+        var key = new GridKey(
+            setting.Chain.Root.Root, setting.Label, strike, right, (int)Math.Round(volatility / VolatilityStep), centre, setting.Rate, setting.Fingerprint, setting.TradedOn);
         return _solved.GetOrAdd(key, k =>
         {
             Interlocked.Increment(ref _grids);
-            return AmericanOption.Solve(Of(right), strike / 1000.0, market.Years, market.Rate, k.Volatility * VolatilityStep, market.Dividends, centre * Below, centre * Above, Grid);
+            return AmericanOption.Solve(Of(right), strike / 1000.0, setting.Years, setting.Rate, k.Volatility * VolatilityStep, setting.Dividends, centre * Below, centre * Above, Grid);
         });
     }
 
-    private static double VolatilityAt(PremiumSetting setting, Market market, int row)
+    private static double VolatilityAt(PremiumSetting setting, int row)
     {
-        double own = Implied(setting.Chain, market, row);
+        double own = Implied(setting, row);
         if (!double.IsNaN(own))
         {
             return own;
@@ -138,7 +187,7 @@ public sealed class Premia
         var near = new List<(int Distance, double Volatility)>();
         for (int i = slice.Start; i < slice.Start + slice.Count; i++)
         {
-            double other = Implied(setting.Chain, market, i);
+            double other = Implied(setting, i);
             if (!double.IsNaN(other))
             {
                 near.Add((Math.Abs(setting.Chain.Columns.Strike[i] - setting.Chain.Columns.Strike[row]), other));
@@ -149,17 +198,18 @@ public sealed class Premia
         return three.Length == 0 ? 0 : three[three.Length / 2];
     }
 
-    private static double Implied(Chain chain, Market market, int row)
+    private static double Implied(PremiumSetting setting, int row)
     {
+        Chain chain = setting.Chain;
         double strike = chain.Columns.Strike[row] / 1000.0;
-        Right right = strike >= market.Forward ? Right.Call : Right.Put;
+        Right right = strike >= setting.Forward ? Right.Call : Right.Put;
         Touch touch = chain.Option(row, right);
-        if (!touch.Quoted || !(market.Years > 0) || !(market.Forward > 0))
+        if (!touch.Quoted || !(setting.Years > 0) || !(setting.Forward > 0))
         {
             return double.NaN;
         }
 
-        double volatility = ImpliedVolatility.European(Of(right), touch.Mid, market.Forward, strike, market.Discount, market.Years).Volatility;
+        double volatility = ImpliedVolatility.European(Of(right), touch.Mid, setting.Forward, strike, setting.Discount, setting.Years).Volatility;
         return double.IsNaN(volatility) ? double.NaN : Math.Round(volatility / VolatilityStep) * VolatilityStep;
     }
 
@@ -173,38 +223,6 @@ public sealed class Premia
 
         return best;
     }
-
-    private static Market MarketOf(PremiumSetting setting)
-    {
-        ExpiryTerms dates = setting.Dates;
-        IFunding benchmark = setting.Benchmark;
-        double years = Math.Max(dates.DaysToExpiry, 0) / DaysOfYear;
-        double discount = benchmark.Discount(dates.PremiumSettles, dates.DeliverySettles, Side.Credit);
-        double rate = years > 0 ? -Math.Log(discount) / years : 0;
-        var dividends = new List<CashDividend>();
-        double worth = 0;
-        ulong print = 14695981039346656037;
-        foreach (ExpectedDividend dividend in setting.Dividends)
-        {
-            if (dividend.Adjusts || dividend.ExOn <= dates.TradedOn || dividend.ExOn > dates.Expiry)
-            {
-                continue;
-            }
-
-            double atEx = dividend.Amount * benchmark.Discount(dividend.ExOn, dividend.CashOn, Side.Credit);
-            dividends.Add(new CashDividend((dividend.ExOn.DayNumber - dates.TradedOn.DayNumber) / DaysOfYear, atEx));
-            worth += dividend.Amount * benchmark.Discount(dates.PremiumSettles, dividend.CashOn > dates.PremiumSettles ? dividend.CashOn : dates.PremiumSettles, Side.Credit);
-            print = Mixed(Mixed(print, (ulong)dividend.ExOn.DayNumber), BitConverter.DoubleToUInt64Bits(atEx));
-        }
-
-        double spot = setting.Chain.UnderlyingMid;
-        return new Market(spot, years, rate, discount, worth, (spot - worth) / discount, [.. dividends], print);
-    }
-
-    private static ulong Mixed(ulong hash, ulong value) => unchecked((hash ^ value) * 1099511628211);
-
-    private readonly record struct Market(
-        double Spot, double Years, double Rate, double Discount, double DividendsWorth, double Forward, CashDividend[] Dividends, ulong Fingerprint);
 
     private readonly record struct GridKey(
         string Root, DateOnly Label, int Strike, Right Right, int Volatility, double Centre, double Rate, ulong Dividends, DateOnly Today);

@@ -31,7 +31,7 @@ public sealed class Entry(ParityRules rules, Premia premia)
             return new Judgement(first, null);
         }
 
-        (Stage? refused, PackagePlan plan) = Priced(candidate, view, units);
+        (Stage? refused, PackagePlan? plan) = Priced(candidate, view, units);
         if (refused is null or Stage.Sanity && candidate.Terms.Kind.HasStock && !view.StockAgrees())
         {
             return new Judgement(Stage.StockAgrees, plan);
@@ -112,8 +112,13 @@ public sealed class Entry(ParityRules rules, Premia premia)
     }
 
     // Bounds of the premium first: most candidates are decided without a volatility.
-    private (Stage? Refused, PackagePlan Plan) Priced(Candidate candidate, ExpiryView view, int units)
+    private (Stage? Refused, PackagePlan? Plan) Priced(Candidate candidate, ExpiryView view, int units)
     {
+        if (OutOfReach(candidate, view))
+        {
+            return (Stage.Edge, null);
+        }
+
         PackagePlan plan = PlanWithout(candidate, view, units);
         double least = Thresholds.Least(rules.Entry, candidate.Terms.Delivered * plan.DiscountToDelivery, view.Dates.FundedDays, plan.CostsPerShare);
         (double leastShort, double mostLong) = Bounds(candidate, view);
@@ -129,6 +134,19 @@ public sealed class Entry(ParityRules rules, Premia premia)
         }
 
         return (plan.EdgePerShare > rules.Entry.TooGood * candidate.Terms.Delivered ? Stage.Sanity : null, plan);
+    }
+
+    // Without fees, and with the premium's bounds alone: decides most candidates before a plan is made.
+    private bool OutOfReach(Candidate candidate, ExpiryView view)
+    {
+        PackageKind kind = candidate.Terms.Kind;
+        SyntheticValue value = view.ValueAt(kind.Funding);
+        double edge = kind.HasStock
+            ? value.Single(kind.Kind, candidate.Chain, candidate.RowLow)
+            : value.Box(kind.Kind, candidate.Chain, candidate.RowLow, candidate.RowHigh);
+        (double leastShort, double mostLong) = Bounds(candidate, view);
+        double least = Thresholds.Least(rules.Entry, candidate.Terms.Delivered * view.Z(view.Dates.DeliverySettles, kind.Funding), view.Dates.FundedDays);
+        return edge - leastShort + (rules.Entry.LongExerciseValue * mostLong) < least;
     }
 
     private (double LeastShort, double MostLong) Bounds(Candidate candidate, ExpiryView view)

@@ -14,6 +14,9 @@ namespace CarryTest.Parity.Screening;
 internal sealed class ExpiryView
 {
     private readonly ParityRules _rules;
+    private PremiumSetting? _premium;
+    private SyntheticValue? _debit;
+    private SyntheticValue? _credit;
 
     public ExpiryView(ParityRules rules, MarketDay day, int snapshot, Chain chain, ExpirySlice slice, BelievedFunding believed, Func<bool> stockAgrees)
     {
@@ -59,7 +62,7 @@ internal sealed class ExpiryView
     public SettlementCycle Cycle { get; }
 
     /// <summary>What premia depend on.</summary>
-    public PremiumSetting Premium => new(Chain, Slice.Expiry, Dates, Dividends, Benchmark);
+    public PremiumSetting Premium => _premium ??= new PremiumSetting(Chain, Slice.Expiry, Dates, Dividends, Benchmark);
 
     /// <summary>The first test that fails for every strike of a kind, the stock's agreement apart; <see cref="LegTests.Passed"/> where none does.</summary>
     public Stage First(Kind kind)
@@ -92,6 +95,17 @@ internal sealed class ExpiryView
         AllDividends.Any(d => !d.Declared && Math.Abs(d.ExOn.DayNumber - Dates.Expiry.DayNumber) <= _rules.Entry.ExDateMarginDays);
 
     private double Undeclared() => Dividends.Where(d => !d.Declared).Sum(d => d.Amount);
+
+    /// <summary>The fast form of the edge at a side.</summary>
+    public SyntheticValue ValueAt(Side side)
+    {
+        if (side == Side.Debit)
+        {
+            return _debit ??= new SyntheticValue(this, _rules, Side.Debit);
+        }
+
+        return _credit ??= new SyntheticValue(this, _rules, Side.Credit);
+    }
 
     /// <summary>Z from today to a date, at a side.</summary>
     public double Z(DateOnly to, Side side) => Believed.Discount(Dates.TradedOn, to, side);

@@ -11,7 +11,7 @@ namespace CarryTest.Parity.Screening;
 /// The fast form of the edge, for one variant and expiry: what a synthetic sold (a) or bought (b) at a strike is worth today, a = (C - P) Zo + K Zx at the prices that are got,
 /// b the same at the prices that are paid. A conversion is a less the stock, a reversal the stock less b, a box a at one strike less b at another. No fees and no early exercise: an upper bound.
 /// </summary>
-internal readonly struct SyntheticValue
+internal sealed class SyntheticValue
 {
     private readonly ExpiryView _view;
     private readonly ParityRules _rules;
@@ -38,9 +38,7 @@ internal readonly struct SyntheticValue
     public bool SingleInReach(Kind kind, Chain chain, int row)
     {
         double strike = chain.Columns.Strike[row] / 1000.0;
-        double edge = kind == Kind.Conversion
-            ? Sold(chain, row) + _dividends - (Price(chain.Stock, buys: true) * _zs)
-            : (Price(chain.Stock, buys: false) * _zs) - Bought(chain, row) - _dividends;
+        double edge = Single(kind, chain, row);
         edge += _longShare > 0 ? _longShare * Premia.Bounds(_view.Premium, row, kind == Kind.Conversion ? Right.Put : Right.Call).Most : 0;
         return edge >= Thresholds.Least(_rules.Entry, strike * _zx, _days);
     }
@@ -87,6 +85,15 @@ internal readonly struct SyntheticValue
             }
         }
     }
+
+    /// <summary>Edge of a conversion or reversal at a row, without fees, borrow and early exercise.</summary>
+    public double Single(Kind kind, Chain chain, int row) => kind == Kind.Conversion
+        ? Sold(chain, row) + _dividends - (Price(chain.Stock, buys: true) * _zs)
+        : (Price(chain.Stock, buys: false) * _zs) - Bought(chain, row) - _dividends;
+
+    /// <summary>Edge of a box at two rows, without fees and early exercise.</summary>
+    public double Box(Kind kind, Chain chain, int low, int high) =>
+        kind == Kind.LongBox ? Sold(chain, high) - Bought(chain, low) : Sold(chain, low) - Bought(chain, high);
 
     /// <summary>a: what a synthetic sold at a row brings.</summary>
     public double Sold(Chain chain, int row) =>

@@ -17,9 +17,6 @@ namespace CarryTest.Pricing.Options;
 /// </remarks>
 internal sealed class BackwardSweep
 {
-    private const double HalfWidth = 5.5;
-    private const double EdgeWidth = 2;
-    private const int WidestGrid = 8;
     private const int FewestSteps = 4;
 
     /// <summary>A stretch is divided into blocks, each four times as long as the one before, with the same number of steps: the
@@ -28,10 +25,14 @@ internal sealed class BackwardSweep
     private const int BlocksAtExDate = 3;
     private const double BlockRatio = 4;
 
+    /// <summary>Away from expiry the curve is smooth already, and fewer steps will do.</summary>
+    private const double ShareAfterExDate = 0.6;
+
     [ThreadStatic]
     private static BackwardSweep? _own;
 
     private readonly HeatStepper _stepper = new();
+    private readonly GridLayout _layout = new();
     private readonly HeatConvolution _convolution = new();
     private HeatGrid _grid = new();
     private HeatGrid _spare = new();
@@ -41,8 +42,7 @@ internal sealed class BackwardSweep
     private double _drift;
     private double _low;
     private double _high;
-    private double _paid;
-    private double _paidAt;
+    private double _waiting;
     private ExerciseEdge _edge;
 
     /// <summary>Solves; dividends latest first, inside (0, years].</summary>
@@ -50,14 +50,14 @@ internal sealed class BackwardSweep
         OptionTerms terms, ReadOnlySpan<CashDividend> dividends, double spotLow, double spotHigh, GridSize size)
     {
         BackwardSweep sweep = _own ??= new BackwardSweep();
-        double scale = Math.Exp((terms.Rate - terms.Yield - (0.5 * terms.Volatility * terms.Volatility)) * terms.Years);
+        double scale = Math.Exp(terms.Drift * terms.Years);
         sweep._low = spotLow * scale;
         sweep._high = spotHigh * scale;
         SpotCurve? premium = null;
         if (terms.ExercisedBetweenExDates)
         {
             sweep.Run(terms, dividends, size, stepped: true);
-            premium = sweep.Read(premium: true);
+            premium = sweep.ReadPremium();
         }
 
         Func<double, double> european = terms.BlackValue;
@@ -65,12 +65,12 @@ internal sealed class BackwardSweep
         {
             // The European value has no error of time this way, and the premium above came from one grid.
             sweep.Run(terms, dividends, size, stepped: false);
-            SpotCurve curve = sweep.Read(premium: false);
+            SpotCurve curve = sweep.ReadEuropean();
             CashDividend[] kept = dividends.ToArray();
             european = spot => curve.Covers(spot * scale)
                 ? Math.Max(curve.At(spot * scale), 0)
                 : CertainPath.European(terms, kept, spot);
-            premium ??= terms.MayBeExercisedEarly(true) ? sweep.Read(premium: true) : null;
+            premium ??= terms.MayBeExercisedEarly(true) ? sweep.ReadPremium() : null;
         }
 
         return new AmericanSolution(terms, spotLow, spotHigh, european, premium is null ? null : Worth(terms, premium, dividends, scale));
@@ -91,9 +91,9 @@ internal sealed class BackwardSweep
         _terms = terms;
         _size = size;
         _stepped = stepped;
-        _drift = terms.Rate - terms.Yield - (0.5 * terms.Volatility * terms.Volatility);
-        _paid = 0;
-        _paidAt = 0;
+        _drift = terms.Drift;
+        _layout.Reset(terms, size.SpaceSteps, stepped, _low);
+        _waiting = 0;
         int next = 0;
         double left = 0;
         if (dividends.Length > 0 && (!stepped || Left(dividends[0]) <= 0))
@@ -189,62 +189,20 @@ internal sealed class BackwardSweep
     private void SmoothFloor(double drop, Vector128<double> slope) => _grid.SmoothKink(Math.Log(drop), slope * drop, 0);
 
     /// <summary>
-    /// Lays a new grid for the stretch of years left from <paramref name="start"/> to <paramref name="end"/>, over all prices at
-    /// which the option is not a straight line; <paramref name="amount"/> is the dividend just before the start.
+    /// A new grid for the stretch of years left from <paramref name="start"/> to <paramref name="end"/>; <paramref name="amount"/>
+    /// is the dividend just before the start.
     /// </summary>
     private void Lay(double start, double end, double amount)
     {
-        double carry = _terms.Rate - _terms.Yield;
-        _paid = (_paid * Math.Exp(-carry * (start - _paidAt))) + amount;
-        _paidAt = start;
-        double deviation = _terms.Volatility * Math.Sqrt(end);
-        double centreAtStart = Centre(start);
-        double centreAtEnd = Centre(end);
-        double low = Math.Min(centreAtStart, centreAtEnd) - (HalfWidth * deviation);
-        double high = Math.Max(centreAtStart, centreAtEnd) + (HalfWidth * deviation);
-        if (_stepped)
-        {
-            // The exercise price stays within sight of the strike, while the centre moves with the forward.
-            double strike = Math.Log(_terms.Strike) + (_drift * end);
-            low = Math.Min(low, strike - (EdgeWidth * deviation));
-            high = Math.Max(high, strike + (EdgeWidth * deviation));
-        }
-
-        double floor = Math.Log(_paid) + (_drift * start);
-        if (_paid > 0 && Math.Log(_low) < floor + (HalfWidth * deviation))
-        {
-            // Spots are asked for at which a dividend may take the whole price.
-            low = Math.Min(low, floor - (HalfWidth * deviation));
-        }
-
-        // Without exercise the curve is smooth, and half the rows are more than enough.
-        int steps = _stepped || _terms.Right == OptionRight.Call ? _size.SpaceSteps : _size.SpaceSteps / 2;
-        double step = 2 * HalfWidth * deviation / steps;
-        int count = (int)Math.Min(Math.Ceiling((high - low) / step), (double)WidestGrid * steps);
-        step = (high - low) / count;
-        int below = (int)Math.Round((centreAtStart - low) / step);
         (_grid, _spare) = (_spare, _grid);
-        if (_terms.Right == OptionRight.Put)
-        {
-            _grid.Lay(centreAtStart - (below * step), step, count + 1);
-        }
-        else
-        {
-            _grid.Lay(centreAtStart + ((count - below) * step), -step, count + 1);
-        }
-    }
-
-    /// <summary>x, some years before expiry, of the price that grows to the strike, less the dividends on the way.</summary>
-    private double Centre(double left)
-    {
-        double carry = _terms.Rate - _terms.Yield;
-        double price = (_terms.Strike * Math.Exp(-carry * left)) + (_paid * Math.Exp(-carry * (left - _paidAt)));
-        return Math.Log(price) + (_drift * left);
+        _layout.Pay(start, amount);
+        _layout.Lay(_grid, start, end);
+        _waiting += amount;
     }
 
     private void SmoothStrike(double left)
     {
-        double x = Centre(left);
+        double x = _layout.Centre(left);
         double jump = Math.Exp(x - (_drift * left) + (_terms.Rate * left));
         _grid.SmoothKink(x, Vector128.Create(jump), _terms.Volatility * Math.Sqrt(left));
     }
@@ -259,7 +217,7 @@ internal sealed class BackwardSweep
 
         Span<Vector128<double>> values = _grid.Values;
         ReadOnlySpan<double> exponentials = _grid.Exponentials;
-        ExerciseValue exercise = Exercise(left);
+        ExerciseValue exercise = ExerciseAt(left);
         double before = 0;
         for (int i = 0; i < values.Length; i++)
         {
@@ -285,7 +243,7 @@ internal sealed class BackwardSweep
         }
     }
 
-    private ExerciseValue Exercise(double left)
+    private ExerciseValue ExerciseAt(double left)
     {
         double sign = _terms.Right == OptionRight.Put ? 1 : -1;
         double level = sign * _terms.Strike * Math.Exp(_terms.Rate * left);
@@ -295,55 +253,93 @@ internal sealed class BackwardSweep
 
     private void Diffuse(double start, double end, bool final)
     {
-        double length = end - start;
-        if (!(length > 0))
+        _edge = default;
+        double held = _stepped ? Math.Min(start + YearsHeld(end - start), end) : end;
+        if (held > start)
         {
-            return;
+            Hold(start, held, final && held >= end);
         }
 
-        double deviation = _terms.Volatility * Math.Sqrt(length);
-        if (!_stepped && deviation >= HeatConvolution.Narrowest * Math.Abs(_grid.Step))
+        if (end > held)
+        {
+            Exercise(held, end);
+        }
+    }
+
+    /// <summary>
+    /// Years before an ex-date in which no put is exercised, as the drop to come is worth more than the interest on the strike.
+    /// Exercised for certain just after the drop, a put is worth its strike and the dividend then.
+    /// </summary>
+    private double YearsHeld(double length)
+    {
+        if (_waiting <= 0 || _terms.Right != OptionRight.Put || _terms.Yield > 0)
+        {
+            return 0;
+        }
+
+        double strike = _terms.Strike;
+        if (Math.Log(strike / _waiting) < GridLayout.HalfWidth * _terms.Volatility * Math.Sqrt(_terms.Years))
+        {
+            // A dividend that may take the whole price leaves prices at which exercise pays at once.
+            return 0;
+        }
+
+        double years = Math.Log(1 + (_waiting / strike)) / _terms.Rate;
+        _waiting = Math.Max(((strike + _waiting) * Math.Exp(-_terms.Rate * length)) - strike, 0);
+        return years;
+    }
+
+    /// <summary>A stretch on which nothing is exercised.</summary>
+    private void Hold(double start, double end, bool final)
+    {
+        double deviation = _terms.Volatility * Math.Sqrt(end - start);
+        if (deviation >= HeatConvolution.Narrowest * Math.Abs(_grid.Step))
         {
             (int first, int last) = final ? SpotCurve.Rows(_grid, _low, _high) : (0, _grid.Count - 1);
             _convolution.Spread(_grid, deviation, first, last);
             return;
         }
 
-        _edge = default;
-        double share = (Math.Sqrt(end) - Math.Sqrt(start)) / Math.Sqrt(_terms.Years);
+        March(start, end, FewestSteps, FewestSteps, exercise: false);
+    }
+
+    /// <summary>A stretch on which exercise may pay at any time.</summary>
+    private void Exercise(double start, double end)
+    {
+        double share = (start > 0 ? ShareAfterExDate : 1) * Math.Sqrt((end - start) / _terms.Years);
         int blocks = start > 0 ? BlocksAtExDate : BlocksAtExpiry;
         int steps = (Math.Max(FewestSteps, (int)Math.Ceiling(_size.TimeSteps * share)) + blocks - 1) / blocks;
         double at = start;
         for (int block = 0; block < blocks; block++)
         {
-            double blockEnd = start + (length * Math.Pow(BlockRatio, block + 1 - blocks));
-            March(at, blockEnd, steps, halves: block == 0 ? 4 : 0);
+            double blockEnd = start + ((end - start) * Math.Pow(BlockRatio, block + 1 - blocks));
+            March(at, blockEnd, steps, block == 0 ? 4 : 0, exercise: true);
             at = blockEnd;
         }
     }
 
     /// <summary>Steps of equal length, the first ones cut into halves.</summary>
-    private void March(double start, double end, int steps, int halves)
+    private void March(double start, double end, int steps, int halves, bool exercise)
     {
         steps = Math.Max(steps, halves / 2);
         double length = (end - start) / steps;
         _stepper.Prepare(_grid, _terms.Volatility, length);
         for (int k = 1; k <= halves; k++)
         {
-            Step(true, start + (k * length / 2));
+            Step(true, start + (k * length / 2), exercise);
         }
 
         for (int k = (halves / 2) + 1; k <= steps; k++)
         {
-            Step(false, start + (k * length));
+            Step(false, start + (k * length), exercise);
         }
     }
 
-    private void Step(bool half, double left)
+    private void Step(bool half, double left, bool exercise)
     {
-        if (_stepped)
+        if (exercise)
         {
-            _edge = _stepper.Step(_grid, half, Exercise(left), _edge);
+            _edge = _stepper.Step(_grid, half, ExerciseAt(left), _edge);
         }
         else
         {
@@ -351,6 +347,9 @@ internal sealed class BackwardSweep
         }
     }
 
-    private SpotCurve Read(bool premium)
-        => SpotCurve.Of(_grid, _low, _high, Math.Exp(-_terms.Rate * _terms.Years), premium);
+    private SpotCurve ReadPremium()
+        => SpotCurve.Premium(_grid, _low, _high, Math.Exp(-_terms.Rate * _terms.Years), _edge);
+
+    private SpotCurve ReadEuropean()
+        => SpotCurve.European(_grid, _low, _high, Math.Exp(-_terms.Rate * _terms.Years));
 }

@@ -14,10 +14,9 @@ internal readonly record struct ExerciseValue(double Level, double Slope, double
     public double LossOfWaiting(double exponential) => LevelLoss + (SlopeLoss * exponential);
 }
 
-/// <summary>
-/// The first row that is held, counted from the side on which exercise pays, and how much a year the part of its cell where
-/// exercise pays adds to its value; row 0: none.
-/// </summary>
-/// <param name="Row">of the grid</param>
-/// <param name="SourcePerYear">in u</param>
-internal readonly record struct ExerciseEdge(int Row, double SourcePerYear);
+/// <summary>The first row that is held, counted from the side on which exercise pays.</summary>
+/// <param name="Row">of the grid; 0: none</param>
+/// <param name="Distance">from the exercise price to the row, in steps, at most 1</param>
+/// <param name="Curve">gain of holding one step beyond the exercise price, in u; it grows with the square of the distance</param>
+/// <param name="Exercise">what exercise pays at that instant</param>
+internal readonly record struct ExerciseEdge(int Row, double Distance, double Curve, ExerciseValue Exercise);

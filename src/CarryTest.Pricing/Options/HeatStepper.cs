@@ -7,12 +7,15 @@ namespace CarryTest.Pricing.Options;
 /// <summary>Steps of time for the heat equation on a grid: one matrix, factored once for steps of one length.</summary>
 /// <remarks>
 /// Every row but the ends: (1 + δ²/12)(u' - u) = volatility² dt/(2 dx²) δ²(u' + u)/2 with δ² the second difference. Where
-/// exercise pays, the row is held up by what exercise pays; its equation then lacks the loss of waiting. The first row that
-/// is held has a cell that lies partly beyond the exercise price, and takes that part of the loss as a source: without it
-/// the exercise price moves in jumps from row to row and the value is too low by the square of the step.
+/// exercise pays, a row is held up by what exercise pays, and rises faster than its neighbours would let it, by the loss of
+/// waiting. The first row that is held has a cell that lies partly beyond the exercise price and takes that part of the loss
+/// as a source; a row on which exercise paid before the step takes its loss for the first half of it. Without these sources
+/// the exercise price moves in jumps from row to row, and the value is too low and rings.
 /// </remarks>
 internal sealed class HeatStepper
 {
+    private const int RowsFreed = 16;
+
     private Vector128<double>[] _eliminated = [];
     private Factor[] _factors = [];
 
@@ -35,7 +38,12 @@ internal sealed class HeatStepper
         double step = grid.Step;
         double variance = volatility * volatility * years;
         _years = years;
-        _number = variance / (4 * step * step);
+
+        // In the limit of small steps variance/(4 step²). Fitted so that exp(x) grows exactly as it should: where the price is
+        // many strikes, an error of its growth would outweigh the interest on the strike that decides on exercise.
+        double halfSinh = 2 * Math.Sinh(0.5 * step);
+        double second = halfSinh * halfSinh;
+        _number = (1 + (second / 12)) * Math.Tanh(variance / 4) / second;
         _rowVariance = step * step / (volatility * volatility);
         double growth = Math.Exp(variance / 2) - 1;
         _growthAtFirst = growth / (Math.Exp(step) - 1);
@@ -62,7 +70,7 @@ internal sealed class HeatStepper
     {
         Span<Vector128<double>> u = grid.Values;
         (Vector128<double> first, Vector128<double> last) = Ends(u, half);
-        Eliminate(u, half, last, default);
+        Eliminate(u, half, last);
         u[0] = first;
         u[^1] = last;
         Substitute(u, 1);
@@ -80,10 +88,28 @@ internal sealed class HeatStepper
         ReadOnlySpan<double> ex = grid.Exponentials;
         (Vector128<double> first, Vector128<double> last) = Ends(u, half);
         last = last.WithElement(0, Math.Max(last[0], exercise.At(ex[^1])));
-        Eliminate(u, half, last, half ? default : edge);
+        Eliminate(u, half, last);
         u[0] = first.WithElement(0, Math.Max(first[0], exercise.At(ex[0])));
         u[^1] = last;
-        return SubstituteExercised(u, ex, exercise);
+        if (half || edge.Row == 0)
+        {
+            return SubstituteExercised(u, ex, exercise);
+        }
+
+        // Rows far from the exercise price stay exercised and need no source; further ones are given it only where it came near.
+        int reached = edge.Row + 1;
+        double added = 0;
+        ExerciseEdge after;
+        do
+        {
+            int to = Math.Max(reached - RowsFreed, 1);
+            added = AddLossBefore(ex, edge, reached, to, added);
+            reached = to;
+            after = SubstituteExercised(u, ex, exercise);
+        }
+        while (after.Row <= reached && reached > 1);
+
+        return after;
     }
 
     /// <summary>New values of the end rows, where the value is a straight line in exp(x), which grows in a known way.</summary>
@@ -94,7 +120,7 @@ internal sealed class HeatStepper
     }
 
     /// <summary>From the last row down: leaves of each row its value, less what it takes from the row below.</summary>
-    private void Eliminate(ReadOnlySpan<Vector128<double>> u, bool half, Vector128<double> last, ExerciseEdge edge)
+    private void Eliminate(ReadOnlySpan<Vector128<double>> u, bool half, Vector128<double> last)
     {
         unchecked
         {
@@ -111,17 +137,39 @@ internal sealed class HeatStepper
                 Vector128<double> below = Unsafe.Add(ref row, i - 1);
                 Factor own = Unsafe.Add(ref factor, i);
                 Vector128<double> right = Vector128.FusedMultiplyAdd(side, above + below, middle * here) * own.Inverse;
-                if (i == edge.Row)
-                {
-                    right += Vector128.CreateScalar(edge.SourcePerYear * _years * own.Inverse);
-                }
-
                 value = Vector128.FusedMultiplyAdd(Vector128.Create(own.Share), value, right);
                 Unsafe.Add(ref z, i) = value;
                 above = here;
                 here = below;
             }
         }
+    }
+
+    /// <summary>
+    /// Adds to lane 0 of the rows eliminated, from below one row down to another, the loss of waiting in the first half of the
+    /// step, where exercise paid before it: in whole from the second row beyond the exercise price on.
+    /// </summary>
+    /// <param name="ex">exp(x) of the rows</param>
+    /// <param name="edge">where exercise stopped paying before the step</param>
+    /// <param name="above">row above the first one</param>
+    /// <param name="to">last row</param>
+    /// <param name="added">what was added to the row above</param>
+    /// <returns>what was added to the last row</returns>
+    private double AddLossBefore(ReadOnlySpan<double> ex, ExerciseEdge edge, int above, int to, double added)
+    {
+        Span<Vector128<double>> z = _eliminated.AsSpan(0, ex.Length);
+        ReadOnlySpan<Factor> factors = _factors.AsSpan(0, ex.Length);
+        for (int i = above - 1; i >= to; i--)
+        {
+            double share = i == edge.Row ? 0.5 * (1 - edge.Distance) * (1 - edge.Distance)
+                : i == edge.Row - 1 ? 1 - (0.5 * edge.Distance * edge.Distance)
+                : 1;
+            double loss = Math.Max(edge.Exercise.LossOfWaiting(ex[i]), 0);
+            added = Math.FusedMultiplyAdd(factors[i].Share, added, 0.5 * _years * loss * share * factors[i].Inverse);
+            z[i] += Vector128.CreateScalar(added);
+        }
+
+        return added;
     }
 
     /// <summary>Upwards from a row whose neighbour below is known.</summary>
@@ -170,9 +218,11 @@ internal sealed class HeatStepper
             double gain = held - exercised;
             if (gain + most > 0)
             {
-                u[i] = Vector128.Create(exercised + Held(gain, most, loss * _rowVariance, out double share), european);
+                double curve = loss * _rowVariance;
+                double distance = Distance(gain, most, curve);
+                u[i] = Vector128.Create(exercised + Math.Max(gain, curve * distance * distance), european);
                 Substitute(u, i + 1);
-                return new ExerciseEdge(i, 0.25 * loss * share);
+                return new ExerciseEdge(i, distance, curve, exercise);
             }
 
             u[i] = Vector128.Create(exercised, european);
@@ -182,24 +232,15 @@ internal sealed class HeatStepper
     }
 
     /// <summary>
-    /// Gain of holding in the first row held. Beyond the exercise price it grows as curve (y/dx)² with the distance y of the
-    /// row; of a cell that reaches over the exercise price a share (1 - y/dx)² of the loss of waiting enters.
+    /// Distance y from the exercise price to the first row held, in steps, at most 1. The gain of holding grows as curve y²;
+    /// of a cell that reaches over the exercise price a share (1 - y)² of the loss of waiting enters.
     /// </summary>
-    /// <param name="gain">without the source</param>
-    /// <param name="most">the source for y = 0</param>
+    /// <param name="gain">of holding without the source</param>
+    /// <param name="most">the source at y = 0</param>
     /// <param name="curve">gain one step beyond the exercise price</param>
-    /// <param name="share">of the loss that enters</param>
-    private static double Held(double gain, double most, double curve, out double share)
+    private static double Distance(double gain, double most, double curve)
     {
-        if (gain >= curve)
-        {
-            share = 0;
-            return gain;
-        }
-
-        double root = Math.Sqrt((curve * (most + gain)) - (most * gain));
-        double distance = Math.Min((most + gain) / (most + root), 1);
-        share = (1 - distance) * (1 - distance);
-        return curve * distance * distance;
+        // The positive root of curve y² = gain + most (1 - y)².
+        return gain >= curve ? 1 : Math.Min((most + gain) / (most + Math.Sqrt((curve * (most + gain)) - (most * gain))), 1);
     }
 }

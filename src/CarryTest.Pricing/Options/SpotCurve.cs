@@ -11,26 +11,47 @@ internal sealed class SpotCurve
     private readonly double _start;
     private readonly double _step;
 
-    private SpotCurve(double[] values, double start, double step)
+    private readonly double _edge;
+
+    private SpotCurve(double[] values, double start, double step, double edge)
     {
+        _edge = edge;
         _values = values;
         _start = start;
         _step = step;
     }
 
-    /// <summary>Copies the rows around a range of exp(x): early-exercise premium or European value, times a factor.</summary>
-    public static SpotCurve Of(HeatGrid grid, double low, double high, double factor, bool premium)
+    /// <summary>European value around a range of exp(x), times a factor.</summary>
+    public static SpotCurve European(HeatGrid grid, double low, double high, double factor)
     {
         (int first, int last) = Rows(grid, low, high);
         double[] values = new double[last - first + 1];
-        ReadOnlySpan<Vector128<double>> rows = grid.Values;
         for (int i = 0; i < values.Length; i++)
         {
-            Vector128<double> row = rows[first + i];
-            values[i] = factor * (premium ? row[0] - row[1] : row[1]);
+            values[i] = factor * grid.Values[first + i][1];
         }
 
-        return new SpotCurve(values, grid.Start + (first * grid.Step), grid.Step);
+        return new SpotCurve(values, grid.Start + (first * grid.Step), grid.Step, double.NegativeInfinity);
+    }
+
+    /// <summary>
+    /// Early-exercise premium around a range of exp(x), times a factor. At the exercise price the premium bends: the rows next
+    /// beyond it are given the values of the parabola on which holding leaves exercise, so that the curve is smooth to it.
+    /// </summary>
+    public static SpotCurve Premium(HeatGrid grid, double low, double high, double factor, ExerciseEdge edge)
+    {
+        (int first, int last) = Rows(grid, low, high);
+        double[] values = new double[last - first + 1];
+        for (int i = 0; i < values.Length; i++)
+        {
+            Vector128<double> row = grid.Values[first + i];
+            double beyond = edge.Row - first - i - edge.Distance;
+            bool bent = edge.Row > 0 && first + i < edge.Row && beyond < 2;
+            values[i] = factor * (row[0] - row[1] + (bent ? edge.Curve * beyond * beyond : 0));
+        }
+
+        double place = edge.Row > 0 ? edge.Row - first - edge.Distance : double.NegativeInfinity;
+        return new SpotCurve(values, grid.Start + (first * grid.Step), grid.Step, place);
     }
 
     /// <summary>The rows, at least four, that are needed to read a range of exp(x).</summary>
@@ -51,10 +72,15 @@ internal sealed class SpotCurve
         return place >= 0 && place <= _values.Length - 1;
     }
 
-    /// <summary>The cubic through the four rows around exp(x), which lies within the rows.</summary>
+    /// <summary>The cubic through the four rows around exp(x), which lies within the rows; 0 where the option is exercised now.</summary>
     public double At(double exponential)
     {
         double place = Place(exponential);
+        if (place < _edge)
+        {
+            return 0;
+        }
+
         int first = Math.Clamp((int)place - 1, 0, _values.Length - 4);
         double t = place - first - 1;
         double back = t + 1;

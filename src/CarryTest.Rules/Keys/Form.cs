@@ -25,6 +25,9 @@ internal sealed record Form<T>(string Expected, Func<Node, Taken<T>> Read, Func<
     /// <summary>Words that this form takes, with their sentences; empty where it takes none.</summary>
     public IReadOnlyList<(string Word, string Sentence)> Words { get; init; } = [];
 
+    /// <summary>Words that a later version takes.</summary>
+    public IReadOnlyList<string> LaterWords { get; init; } = [];
+
     public Taken<T> Refuse(Node node) => new(default!, node.At, key => $"`{key}` must be {Expected}; found {node.Shown}");
 
     public static Taken<T> Refuse(Node node, Func<string, string> fault) => new(default!, node.At, fault);

@@ -17,7 +17,7 @@ internal static class Forms
         form = new Form<long>(
             Range("a whole number", least, most, least == long.MinValue, most == long.MaxValue),
             node => node is WholeNode whole && whole.Value >= least && whole.Value <= most ? Taken.Of(whole.Value, node) : form.Refuse(node),
-            Text,
+            Invariant,
             () => Bounds("integer", least, most == long.MaxValue ? null : most));
         return form;
     }
@@ -29,7 +29,7 @@ internal static class Forms
         form = new Form<int>(
             Range("a whole number", least, most, false, most == int.MaxValue),
             node => node is WholeNode whole && whole.Value >= least && whole.Value <= most ? Taken.Of((int)whole.Value, node) : form.Refuse(node),
-            v => Text(v),
+            v => Invariant(v),
             () => Bounds("integer", least, most == int.MaxValue ? null : most));
         return form;
     }
@@ -42,7 +42,7 @@ internal static class Forms
     public static Form<double> Number(double least, double most, bool above = false, string hint = "")
     {
         string range = above
-            ? string.Create(CultureInfo.InvariantCulture, $"a number above {least}{(double.IsInfinity(most) ? "" : $", at most {Text(most)}")}")
+            ? string.Create(CultureInfo.InvariantCulture, $"a number above {least}{(double.IsInfinity(most) ? "" : $", at most {Invariant(most)}")}")
             : Range("a number", least, most, double.IsInfinity(least), double.IsInfinity(most));
         Form<double> form = null!;
         form = new Form<double>(
@@ -50,7 +50,7 @@ internal static class Forms
             node => NumberOf(node) is { } value && value <= most && (above ? value > least : value >= least) && double.IsFinite(value)
                 ? Taken.Of(value, node)
                 : form.Refuse(node),
-            Text,
+            Invariant,
             () => Bounds("number", least, double.IsInfinity(most) ? null : most, above));
         return form;
     }
@@ -65,7 +65,7 @@ internal static class Forms
             node => node is TextNode { Value: "none" } ? Taken.Of<double?>(null, node)
                 : number.Read(node) is { Fault: null } taken ? Taken.Of<double?>(taken.Value, node)
                 : form.Refuse(node),
-            v => v is { } value ? Text(value) : "\"none\"",
+            v => v is { } value ? Invariant(value) : "\"none\"",
             () => new JsonObject { ["anyOf"] = new JsonArray(number.Schema(), new JsonObject { ["const"] = "none" }) });
         return form;
     }
@@ -111,7 +111,7 @@ internal static class Forms
     /// <summary>Text that is not empty.</summary>
     /// <param name="expected">what it is, for messages</param>
     /// <param name="suits">what else it must satisfy</param>
-    public static Form<string> Words(string expected, Func<string, bool>? suits = null)
+    public static Form<string> Text(string expected, Func<string, bool>? suits = null)
     {
         Form<string> form = null!;
         form = new Form<string>(
@@ -123,7 +123,7 @@ internal static class Forms
     }
 
     /// <summary>A path of a file or folder, relative to the rule book.</summary>
-    public static Form<string> Path(string what) => Words($"the path of {what} in quotes, relative to the rule book", path => !path.Contains('\0'));
+    public static Form<string> Path(string what) => Text($"the path of {what} in quotes, relative to the rule book", path => !path.Contains('\0'));
 
     /// <summary>One of the words of an enum.</summary>
     /// <param name="later">values that a later version brings: known, and refused</param>
@@ -150,6 +150,7 @@ internal static class Forms
             () => new JsonObject { ["enum"] = new JsonArray([.. known.Select(w => (JsonNode)w.Word)]) })
         {
             Words = [.. known.Select(w => (w.Word, w.Sentence))],
+            LaterWords = [.. later.Select(v => v.Word())],
         };
         return form;
     }
@@ -176,7 +177,7 @@ internal static class Forms
                     Taken<T> taken = item.Read(each);
                     if (taken.Fault is { } fault)
                     {
-                        return new Taken<ImmutableArray<T>>([], taken.At, key => fault(key));
+                        return new Taken<ImmutableArray<T>>([], taken.At, fault);
                     }
 
                     if (items.Contains(taken.Value))
@@ -239,15 +240,20 @@ internal static class Forms
         (openBelow, openAbove) switch
         {
             (true, true) => what,
-            (false, true) => $"{what}, at least {Text(least)}",
-            (true, false) => $"{what}, at most {Text(most)}",
-            _ => $"{what} from {Text(least)} to {Text(most)}",
+            (false, true) => $"{what}, at least {Invariant(least)}",
+            (true, false) => $"{what}, at most {Invariant(most)}",
+            _ => $"{what} from {Invariant(least)} to {Invariant(most)}",
         };
 
     private static JsonObject Bounds<T>(string type, T least, T? most, bool above = false)
         where T : struct
     {
-        var schema = new JsonObject { ["type"] = type, [above ? "exclusiveMinimum" : "minimum"] = JsonValue.Create(least) };
+        var schema = new JsonObject { ["type"] = type };
+        if (least is not double.NegativeInfinity)
+        {
+            schema[above ? "exclusiveMinimum" : "minimum"] = JsonValue.Create(least);
+        }
+
         if (most is { } limit)
         {
             schema["maximum"] = JsonValue.Create(limit);
@@ -256,6 +262,6 @@ internal static class Forms
         return schema;
     }
 
-    private static string Text<T>(T value)
+    private static string Invariant<T>(T value)
         where T : IFormattable => value.ToString(null, CultureInfo.InvariantCulture);
 }

@@ -32,6 +32,8 @@ internal abstract class Key(string path, string sentence)
 
     public virtual IReadOnlyList<(string Word, string Sentence)> Words => [];
 
+    public virtual IReadOnlyList<string> LaterWords => [];
+
     public abstract JsonObject Schema();
 
     /// <summary>Adds what is wrong with a value.</summary>
@@ -91,6 +93,8 @@ internal sealed class Key<T>(string path, Form<T> form, string sentence) : Key(p
     public override string WhenAbsent => DefaultText ?? _whenAbsent ?? "";
 
     public override IReadOnlyList<(string Word, string Sentence)> Words => form.Words;
+
+    public override IReadOnlyList<string> LaterWords => form.LaterWords;
 
     public override JsonObject Schema() => form.Schema();
 

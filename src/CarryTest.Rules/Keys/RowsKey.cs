@@ -11,7 +11,7 @@ internal sealed class RowsKey(string path, Shape row, string sentence) : Key(pat
     /// <summary>At most so many.</summary>
     public int MostRows { get; init; } = int.MaxValue;
 
-    public override string Expected => MostRows == int.MaxValue ? "a list of tables" : $"a list of at most {MostRows} tables";
+    public override string Expected => MostRows == int.MaxValue ? $"a list of tables, each under [[{Path}]]" : $"a list of at most {MostRows} tables";
 
     public override JsonObject Schema()
     {
@@ -31,9 +31,21 @@ internal sealed class RowsKey(string path, Shape row, string sentence) : Key(pat
 
     protected override void CheckValue(Node node, string shown, Problems problems)
     {
-        if (node is not ListNode { OfTables: true } list || list.Items.Length > MostRows)
+        if (node is not ListNode list)
         {
-            problems.Add(node.At, $"`{shown}` must be {Expected}; found {(node is ListNode many ? $"{many.Items.Length} items" : node.Shown)}");
+            problems.Add(node.At, $"`{shown}` must be {Expected}; found {node.Shown}");
+            return;
+        }
+
+        if (list.Items.FirstOrDefault(i => i is not TableNode) is { } other)
+        {
+            problems.Add(other.At, $"`{shown}` must be {Expected}; found {other.Shown} in it");
+            return;
+        }
+
+        if (list.Items.Length > MostRows)
+        {
+            problems.Add(list.Items[MostRows].At, $"`{shown}` must be {Expected}; found {list.Items.Length}");
             return;
         }
 

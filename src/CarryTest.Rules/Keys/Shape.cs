@@ -69,8 +69,15 @@ internal sealed class Shape
     public void CheckChanges(TableNode changes, string prefix, Problems problems) => Walk(changes, "", prefix, problems, changes: true);
 
     /// <summary>The complaint about a key that nobody knows, with the nearest that is known.</summary>
-    public string Unknown(string path, string prefix = "") =>
-        $"unknown key `{prefix}{path}`; the nearest known one is `{prefix}{NearestKey.Of(path, [.. _keys.Keys, .. _tables])}`";
+    /// <param name="path">the unknown one</param>
+    /// <param name="prefix">what goes before it in messages</param>
+    /// <param name="settingsOnly">whether lists of tables are none of the known ones</param>
+    public string Unknown(string path, string prefix = "", bool settingsOnly = false)
+    {
+        string[] known = [.. Keys.Where(k => !settingsOnly || k is not RowsKey).Select(k => k.Path)];
+        string[] tables = [.. _tables.Where(t => Array.Exists(known, k => k.StartsWith(t + ".", StringComparison.Ordinal)))];
+        return $"unknown key `{prefix}{path}`; the nearest known one is `{prefix}{NearestKey.Of(path, [.. known, .. tables])}`";
+    }
 
     public JsonObject Schema() => SchemaOf("");
 
@@ -83,9 +90,9 @@ internal sealed class Shape
             {
                 key.Check(entry.Value, prefix + path, entry.At, problems);
             }
-            else if (!_tables.Contains(path))
+            else if (!_tables.Contains(path) || (changes && HoldsRowsOnly(path)))
             {
-                problems.Add(entry.At, Unknown(path, prefix));
+                problems.Add(entry.At, Unknown(path, prefix, changes));
             }
             else if (entry.Value is TableNode inner)
             {
@@ -97,6 +104,8 @@ internal sealed class Shape
             }
         }
     }
+
+    private bool HoldsRowsOnly(string table) => Keys.Where(k => k.Path.StartsWith(table + ".", StringComparison.Ordinal)).All(k => k is RowsKey);
 
     /// <summary>Where a missing key belongs: its table if that is there, else the table above.</summary>
     private static Place PlaceFor(TableNode table, string path)

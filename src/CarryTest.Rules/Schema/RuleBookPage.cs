@@ -40,12 +40,18 @@ internal static class RuleBookPage
             Section(page, $"`[[{rows.Path}]]`", $"{rows.Sentence} Read by `{command}`.", rows.Row.Keys, "###");
         }
 
-        page.Append("## Not in this version\n\nThese keys are known and refused:\n\n");
+        page.Append("## Not in this version\n\nThese keys and words are known and refused:\n\n");
         foreach (Key key in RuleBookKeys.Shape.Keys.Where(k => k.Later is not null))
         {
             page.Append(CultureInfo.InvariantCulture, $"- `{key.Path}`: {key.Later}\n");
         }
 
+        foreach (Key key in RuleBookKeys.OfBook.Where(k => k.LaterWords.Count > 0))
+        {
+            page.Append(CultureInfo.InvariantCulture, $"- `{key.Path}`: {string.Join(", ", key.LaterWords.Select(w => $"`{w}`"))} comes with a later version\n");
+        }
+
+        page.Append("- `execution.across_sessions`: `true` comes with a later version\n");
         page.Append("\n## The fee schedule\n\nThe file that `costs.schedule` names: TOML, one `[[fee]]` a row. A row counts by trade date, for deliveries by the date of exercise.\n\n");
         Table(page, FeeKeys.Rows.Row.Keys);
         page.Append("""

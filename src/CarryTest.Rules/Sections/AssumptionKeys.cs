@@ -22,10 +22,10 @@ internal sealed class AssumptionKeys
     {
         _kind = new Key<FundingKind>($"{table}.kind", Forms.Word(later), "Where the rate of a night comes from.") { Default = usual.Kind };
         _rate = new Key<double>($"{table}.rate", Forms.Number(-0.1, 1, hint: "a fraction a year: 0.05 is five percent"), "Of kind `flat`: the rate, a fraction a year.") { Otherwise = "needed for kind `flat`" };
-        _from = new Key<string>($"{table}.from", Forms.Words("a root in quotes, or \"own\""), "Of kind `implied`: the root whose chains imply the rate, or `own`.")
+        _from = new Key<string>($"{table}.from", Forms.Text("a root in quotes, or \"own\""), "Of kind `implied`: the root whose chains imply the rate, or `own`.")
         {
             Otherwise = "a European root of the same currency",
-            Later = later.Contains(FundingKind.Implied) ? "rates that chains imply come with a later one" : null,
+            Later = later.Contains(FundingKind.Implied) ? "rates that chains imply come with a later version" : null,
         };
         _debitSpreadBps = new Key<double>($"{table}.debit_spread_bps", Forms.Number(-10_000, 10_000), "Added to the rate where cash is owed, basis points.") { Default = usual.DebitSpreadBps };
         _creditSpreadBps = new Key<double>($"{table}.credit_spread_bps", Forms.Number(-10_000, 10_000), "Taken from the rate where cash is held, basis points.") { Default = usual.CreditSpreadBps };

@@ -6,7 +6,7 @@ namespace CarryTest.Rules.Sections;
 /// <summary>`[borrow]`.</summary>
 internal static class BorrowSection
 {
-    private const string NoRecalls = "recalls of borrowed stock come with a later one";
+    private const string NoRecalls = "recalls of borrowed stock come with a later version";
 
     private static readonly BorrowSettings Usual = new();
 

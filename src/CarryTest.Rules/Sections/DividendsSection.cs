@@ -55,6 +55,7 @@ internal static class DividendsSection
             })
         {
             Words = Known.Words,
+            LaterWords = [DividendForecastKind.Implied.Word()],
         };
         return form;
     }

@@ -8,7 +8,7 @@ namespace CarryTest.Rules.Sections;
 internal static class FeeKeys
 {
     private static readonly Key<string> Line =
-        new("line", Forms.Words("the name of an account in quotes: lower-case letters, digits and hyphens", s => s.All(c => char.IsAsciiLetterLower(c) || char.IsAsciiDigit(c) || c == '-')), "The account it is booked to, as `commission` or `clearing`.") { Required = true };
+        new("line", Forms.Text("the name of an account in quotes: lower-case letters, digits and hyphens", s => s.All(c => char.IsAsciiLetterLower(c) || char.IsAsciiDigit(c) || c == '-')), "The account it is booked to, as `commission` or `clearing`.") { Required = true };
 
     private static readonly Key<FeeApplies> AppliesTo = new("applies_to", Forms.Word<FeeApplies>(), "What it is charged on.") { Required = true };
 
@@ -32,7 +32,7 @@ internal static class FeeKeys
 
     private static readonly Key<DateOnly> KnownOn = new("known_on", Forms.Date(), "The day on which it was announced: plans made after that day use it.") { Otherwise = "`from`" };
 
-    private static readonly Key<string> Source = new("source", Forms.Words("where the figure comes from, in quotes"), "Where the figure comes from.") { Required = true };
+    private static readonly Key<string> Source = new("source", Forms.Text("where the figure comes from, in quotes"), "Where the figure comes from.") { Required = true };
 
     public static readonly RowsKey Rows = new(
         "fee",

@@ -14,7 +14,7 @@ internal static class FundingCaseSection
         "funding_case",
         new Shape(
             [
-                new Key<string>("name", Forms.Words("a name in quotes"), "Names the case in tables and figures.") { Required = true },
+                new Key<string>("name", Forms.Text("a name in quotes"), "Names the case in tables and figures.") { Required = true },
                 .. Believed.All,
                 .. Charged.All,
             ],

@@ -21,7 +21,7 @@ internal static class HistorySection
     private static readonly Key<DateOnly> To = new("history.to", Forms.Date(), "Last day, included.") { Otherwise = "the last day of the history" };
 
     private static readonly Key<ImmutableArray<string>> Underlyings =
-        new("history.underlyings", Forms.List(Forms.Words("a name in quotes without spaces, `*` and `?` stand for any letters", s => !s.Any(char.IsWhiteSpace)), "names", mayBeEmpty: false), "Underlyings that are read; `*` stands for any letters, `?` for one.")
+        new("history.underlyings", Forms.List(Forms.Text("a name in quotes without spaces, `*` and `?` stand for any letters", s => !s.Any(char.IsWhiteSpace)), "names", mayBeEmpty: false), "Underlyings that are read; `*` stands for any letters, `?` for one.")
         {
             Default = Usual.Underlyings,
         };

@@ -30,7 +30,7 @@ internal static class PackagesSection
         new("packages.equity_fraction_per_name", Forms.Number(0, 100, above: true), "Cash tied up in one underlying, as a fraction of equity, at most.") { Default = Usual.EquityFractionPerName };
 
     private static readonly Key<ImmutableArray<string>> Block =
-        new("packages.block", Forms.List(Forms.Words("a name in quotes without spaces", s => !s.Any(char.IsWhiteSpace)), "names", mayBeEmpty: true), "Underlyings never traded.") { Default = Usual.Block };
+        new("packages.block", Forms.List(Forms.Text("a name in quotes without spaces", s => !s.Any(char.IsWhiteSpace)), "names", mayBeEmpty: true), "Underlyings never traded.") { Default = Usual.Block };
 
     public static readonly IReadOnlyList<Key> Keys =
         [Kinds, DaysToExpiry, Moneyness, BoxWidth, UnitsPerPackage, PackagesPerName, PackagesPerExpiry, PackagesPerStrike, EquityFractionPerName, Block];

@@ -6,7 +6,7 @@ namespace CarryTest.Rules.Sections;
 internal static class RunSection
 {
     public static readonly Key<string> Name =
-        new("name", Forms.Words("a name fit for a folder in quotes (letters, digits, spaces, `-`, `_` and `.`, at most 100)", IsFolderName), "Names the run and the folder of its results.")
+        new("name", Forms.Text("a name fit for a folder in quotes (letters, digits, spaces, `-`, `_` and `.`, at most 100)", IsFolderName), "Names the run and the folder of its results.")
         {
             Otherwise = "the rule book's file name without its extension",
         };

@@ -9,7 +9,7 @@ namespace CarryTest.Rules.Sections;
 /// <summary>`[[surprise]]`: read by the command `stress`.</summary>
 internal static class SurpriseSection
 {
-    private static readonly Key<string> Name = new("name", Forms.Words("a name in quotes"), "Names the surprise in tables and figures.") { Required = true };
+    private static readonly Key<string> Name = new("name", Forms.Text("a name in quotes"), "Names the surprise in tables and figures.") { Required = true };
 
     private static readonly Key<DividendChange> Change = new("dividend.change", Forms.Word<DividendChange>(), "What happens to dividends.");
 
@@ -31,7 +31,7 @@ internal static class SurpriseSection
 
     private static readonly Key<DateOnly> FundingTo = Last("funding.to", "Last night.");
 
-    private static readonly Key<string> GapSymbol = new("gap.symbol", Forms.Words("an underlying in quotes"), "The underlying whose price jumps.");
+    private static readonly Key<string> GapSymbol = new("gap.symbol", Forms.Text("an underlying in quotes"), "The underlying whose price jumps.");
 
     private static readonly Key<DateOnly> GapExpiry = new("gap.expiry", Forms.Date(), "The expiry over which it jumps.");
 
@@ -134,7 +134,7 @@ internal static class SurpriseSection
     }
 
     private static Key<ImmutableArray<string>> Symbols(string path) =>
-        new(path, Forms.List(Forms.Words("a name in quotes"), "names", mayBeEmpty: false), "The underlyings it concerns.") { Otherwise = "all" };
+        new(path, Forms.List(Forms.Text("a name in quotes"), "names", mayBeEmpty: false), "The underlyings it concerns.") { Otherwise = "all" };
 
     private static Key<DateOnly> First(string path, string sentence) => new(path, Forms.Date(), sentence) { Otherwise = "from the first day" };
 

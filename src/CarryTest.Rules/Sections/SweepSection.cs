@@ -9,15 +9,15 @@ internal static class SweepSection
 {
     private const int MostSteps = 10_000;
 
-    private static readonly Key<string> Setting = new("setting", Forms.Words("the dotted name of a setting in quotes"), "The setting that is varied, by its dotted name; it must hold a number.") { Required = true };
+    private static readonly Key<string> Setting = new("setting", Forms.Text("the dotted name of a setting in quotes"), "The setting that is varied, by its dotted name; it must hold a number.") { Required = true };
 
-    private static readonly Key<double> From = new("from", Forms.Number(double.MinValue, double.MaxValue), "First value.") { Required = true };
+    private static readonly Key<double> From = new("from", Forms.Number(double.NegativeInfinity, double.PositiveInfinity), "First value.") { Required = true };
 
-    private static readonly Key<double> To = new("to", Forms.Number(double.MinValue, double.MaxValue), "Last value.") { Required = true };
+    private static readonly Key<double> To = new("to", Forms.Number(double.NegativeInfinity, double.PositiveInfinity), "Last value.") { Required = true };
 
-    private static readonly Key<double> Step = new("step", Forms.Number(0, double.MaxValue, above: true), "From one value to the next.") { Required = true };
+    private static readonly Key<double> Step = new("step", Forms.Number(0, double.PositiveInfinity, above: true), "From one value to the next.") { Required = true };
 
-    private static readonly Key<string> Variant = new("name", Forms.Words("a name in quotes"), "Names the variant in tables and figures.") { Required = true };
+    private static readonly Key<string> Variant = new("name", Forms.Text("a name in quotes"), "Names the variant in tables and figures.") { Required = true };
 
     public static readonly RowsKey Vary = new("sweep.vary", new Shape([Setting, From, To, Step], null, CheckRange), "One or two settings, each over a range.") { MostRows = 2 };
 
@@ -29,9 +29,9 @@ internal static class SweepSection
     private static void CheckRange(Values values, string prefix, Problems problems)
     {
         string setting = values.Of(Setting);
-        if (RuleBookKeys.Shape.Find(setting) is not { } key)
+        if (RuleBookKeys.Shape.Find(setting) is not { } key || key is RowsKey)
         {
-            problems.Add(values.PlaceOf(Setting), RuleBookKeys.Shape.Unknown(setting));
+            problems.Add(values.PlaceOf(Setting), RuleBookKeys.Shape.Unknown(setting, settingsOnly: true));
             return;
         }
 

@@ -5,7 +5,7 @@ namespace CarryTest.Rules.Sections;
 /// <summary>`[unwind]`: known, and refused when written.</summary>
 internal static class UnwindSection
 {
-    private const string NoUnwinding = "closing before expiry comes with a later one";
+    private const string NoUnwinding = "closing before expiry comes with a later version";
 
     public static readonly IReadOnlyList<Key> Keys =
     [

@@ -22,7 +22,14 @@ internal sealed record WholeNode(Place At, long Value) : Node(At)
 
 internal sealed record NumberNode(Place At, double Value) : Node(At)
 {
-    public override string Shown => Value.ToString("R", CultureInfo.InvariantCulture);
+    public override string Shown => Value switch
+    {
+        double.NaN => "nan",
+        double.PositiveInfinity => "inf",
+        double.NegativeInfinity => "-inf",
+        _ when double.IsInteger(Value) && Math.Abs(Value) < 1e15 => Value.ToString("F1", CultureInfo.InvariantCulture),
+        _ => Value.ToString("R", CultureInfo.InvariantCulture),
+    };
 }
 
 internal sealed record FlagNode(Place At, bool Value) : Node(At)

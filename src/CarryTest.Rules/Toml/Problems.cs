@@ -19,7 +19,10 @@ internal sealed class Problems
     {
         if (Any)
         {
-            throw new InputException(string.Join('\n', _found.OrderBy(p => p.At.Line == 0).ThenBy(p => p.At.Line).ThenBy(p => p.At.Column).Select(p => $"{p.At}: {p.Message}")));
+            throw new InputException(string.Join('\n', _found.OrderBy(p => p.At.Line == 0).ThenBy(p => p.At.Line).ThenBy(p => p.At.Column).Select(p => OneLine($"{p.At}: {p.Message}"))));
         }
     }
+
+    // What a file or a command line holds may have line breaks and worse in it; a problem stays on its line.
+    private static string OneLine(string problem) => string.Concat(problem.Select(c => char.IsControl(c) ? '\u2424' : c));
 }

@@ -1,3 +1,4 @@
+using Tomlyn;
 using Tomlyn.Parsing;
 using Tomlyn.Syntax;
 
@@ -27,18 +28,37 @@ internal sealed class TomlText
 
     private static TableNode Read(string text, Func<TextPosition, Place> placeOf, Place start, Problems problems)
     {
-        DocumentSyntax document = SyntaxParser.Parse(text);
+        DocumentSyntax document;
+        try
+        {
+            document = SyntaxParser.Parse(text);
+        }
+        catch (TomlException fault)
+        {
+            // The parser gives up on some texts, such as lists nested beyond reason, instead of gathering what is wrong.
+            problems.Add(placeOf(new TextPosition(0, Math.Max((fault.Line ?? 1) - 1, 0), Math.Max((fault.Column ?? 1) - 1, 0))), $"this is not TOML: {fault.Message}");
+            return new TableNode(start);
+        }
+
         if (document.HasErrors)
         {
             foreach (DiagnosticMessage message in document.Diagnostics)
             {
-                problems.Add(placeOf(message.Span.Start), $"this is not TOML: {message.Message}");
+                // A text that ends too early is reported at its beginning by the parser; the end is where to look.
+                TextPosition at = message.Message.Contains("<eof>", StringComparison.Ordinal) ? EndOf(text) : message.Span.Start;
+                problems.Add(placeOf(at), $"this is not TOML: {message.Message}");
             }
 
             return new TableNode(start);
         }
 
         return new TomlText(placeOf, problems).Document(document, start);
+    }
+
+    private static TextPosition EndOf(string text)
+    {
+        int lastLine = text.LastIndexOf('\n') + 1;
+        return new TextPosition(text.Length, text.AsSpan().Count('\n'), text.Length - lastLine);
     }
 
     private TableNode Document(DocumentSyntax document, Place start)
