@@ -29,6 +29,9 @@ internal abstract class Column(string name, string type, string unit, string sen
     /// <summary>Whether a cell may be empty.</summary>
     public bool Optional => Declared.IsNullable;
 
+    /// <summary>Whether its invariant text is a number.</summary>
+    public bool IsNumber => Declared.ClrType == typeof(int) || Declared.ClrType == typeof(long) || Declared.ClrType == typeof(double) || Declared.ClrType == typeof(decimal);
+
     /// <summary>Reads the column of one row group: an array of strings or of nullable values.</summary>
     public abstract Array Read(ParquetRowGroupReader group, DataField stored);
 }
