@@ -28,6 +28,9 @@ internal sealed class BackwardSweep
     /// <summary>Away from expiry the curve is smooth already, and fewer steps will do.</summary>
     private const double ShareAfterExDate = 0.6;
 
+    /// <summary>Of the steps, for a stretch however short: the exercise price may cross all prices in it.</summary>
+    private const double LeastShare = 0.25;
+
     [ThreadStatic]
     private static BackwardSweep? _own;
 
@@ -138,7 +141,7 @@ internal sealed class BackwardSweep
             values[i] = Vector128.Create(_terms.Intrinsic(prices[i]));
         }
 
-        SmoothStrike(0);
+        SmoothStrike(0, double.NegativeInfinity);
     }
 
     /// <summary>Just before the last ex-date, where the closed form is known after it (at expiry: the payoff).</summary>
@@ -155,13 +158,12 @@ internal sealed class BackwardSweep
             values[i] = Vector128.Create(growth * _terms.BlackValue(after, left));
         }
 
-        SmoothStrike(left);
         if (_terms.Right == OptionRight.Put)
         {
             SmoothFloor(amount / toSpot, Vector128.Create(-Math.Exp(_drift * -left) * growth * Math.Exp(-_terms.Yield * left)));
         }
 
-        ExerciseBeforeDrop(left);
+        SmoothStrike(left, ExerciseBeforeDrop(left));
     }
 
     /// <summary>Carries the values over an ex-date onto a grid for the stretch before it.</summary>
@@ -177,10 +179,9 @@ internal sealed class BackwardSweep
             values[i] = after.At(Math.Max(exponentials[i] - drop, 0));
         }
 
-        SmoothStrike(left);
         double lowest = Math.Min(after.Exponentials[0], after.Exponentials[^1]);
         SmoothFloor(drop, (after.At(lowest) - after.At(0)) / lowest);
-        ExerciseBeforeDrop(left);
+        SmoothStrike(left, ExerciseBeforeDrop(left));
     }
 
     /// <summary>Where the dividend takes the whole price, the value after it stops changing.</summary>
@@ -200,19 +201,26 @@ internal sealed class BackwardSweep
         _waiting += amount;
     }
 
-    private void SmoothStrike(double left)
+    /// <summary>Makes the kink at the strike count as it should, where the option is held there.</summary>
+    /// <param name="left">years left</param>
+    /// <param name="edge">place of the exercise price, in rows: up to it the option is exercised</param>
+    private void SmoothStrike(double left, double edge)
     {
         double x = _layout.Centre(left);
         double jump = Math.Exp(x - (_drift * left) + (_terms.Rate * left));
-        _grid.SmoothKink(x, Vector128.Create(jump), _terms.Volatility * Math.Sqrt(left));
+        bool held = (x - _grid.Start) / _grid.Step > edge;
+        _grid.SmoothKink(x, Vector128.Create(held ? jump : 0, jump), _terms.Volatility * Math.Sqrt(left));
     }
 
-    /// <summary>The holder of a call may exercise just before the drop; the value bends where that begins to pay.</summary>
-    private void ExerciseBeforeDrop(double left)
+    /// <summary>
+    /// The holder of a call may exercise just before the drop; the value bends where that begins to pay. Returns the
+    /// place of that price, in rows.
+    /// </summary>
+    private double ExerciseBeforeDrop(double left)
     {
         if (_terms.Right != OptionRight.Call)
         {
-            return;
+            return double.NegativeInfinity;
         }
 
         Span<Vector128<double>> values = _grid.Values;
@@ -229,18 +237,21 @@ internal sealed class BackwardSweep
             }
             else
             {
-                if (before > 0)
+                if (before <= 0)
                 {
-                    double row = i - 1 + (before / (before - gain));
-                    double jump = (before - gain) / Math.Abs(_grid.Step);
-                    _grid.SmoothKink(_grid.Start + (row * _grid.Step), Vector128.CreateScalar(jump), 0);
+                    return double.NegativeInfinity;
                 }
 
-                return;
+                double row = i - 1 + (before / (before - gain));
+                double jump = (before - gain) / Math.Abs(_grid.Step);
+                _grid.SmoothKink(_grid.Start + (row * _grid.Step), Vector128.CreateScalar(jump), 0);
+                return row;
             }
 
             before = gain;
         }
+
+        return double.PositiveInfinity;
     }
 
     private ExerciseValue ExerciseAt(double left)
@@ -308,7 +319,7 @@ internal sealed class BackwardSweep
     {
         double share = (start > 0 ? ShareAfterExDate : 1) * Math.Sqrt((end - start) / _terms.Years);
         int blocks = start > 0 ? BlocksAtExDate : BlocksAtExpiry;
-        int steps = (Math.Max(FewestSteps, (int)Math.Ceiling(_size.TimeSteps * share)) + blocks - 1) / blocks;
+        int steps = ((int)Math.Ceiling(_size.TimeSteps * Math.Max(share, LeastShare)) + blocks - 1) / blocks;
         double at = start;
         for (int block = 0; block < blocks; block++)
         {
