@@ -1,3 +1,4 @@
+using System.Collections.Concurrent;
 using System.Collections.Immutable;
 using CarryTest.Market.Money;
 using CarryTest.Market.Words;
@@ -162,6 +163,8 @@ public sealed record CostSettings
 /// <param name="Rows">as read</param>
 public sealed record FeeSchedule(ImmutableArray<FeeRow> Rows)
 {
+    private readonly ConcurrentDictionary<(DateOnly TradedOn, DateOnly? KnownOn), int[]> _holding = new();
+
     /// <summary>No fees.</summary>
     public static FeeSchedule None { get; } = new([]);
 
@@ -178,19 +181,16 @@ public sealed record FeeSchedule(ImmutableArray<FeeRow> Rows)
         }
 
         var fees = new SortedList<(int Item, int Row), Cash>();
-        for (int r = 0; r < Rows.Length; r++)
+        foreach (int r in Holding(tradedOn, knownOn))
         {
-            FeeRow row = Rows[r];
-            if (!Holds(row, tradedOn, knownOn))
-            {
-                continue;
-            }
-
-            Charge(items, r, row, fees);
+            Charge(items, r, Rows[r], fees);
         }
 
         return [.. fees.Where(f => f.Value != Cash.Zero).Select(f => new Fee(f.Key.Item, Rows[f.Key.Row].Line, f.Value))];
     }
+
+    private int[] Holding(DateOnly tradedOn, DateOnly? knownOn) =>
+        _holding.GetOrAdd((tradedOn, knownOn), key => [.. Enumerable.Range(0, Rows.Length).Where(r => Holds(Rows[r], key.TradedOn, key.KnownOn))]);
 
     private static void Charge(ReadOnlySpan<FeeItem> items, int r, FeeRow row, SortedList<(int Item, int Row), Cash> fees)
     {
