@@ -13,7 +13,7 @@ namespace CarryTest.Invention;
 /// <summary>Writes an invented exchange: the demonstration year, or a market of the same kind of any size. The same seed gives the same bytes.</summary>
 public static class InventedMarket
 {
-    private const int RowsOfNameAndDay = 290;
+    private const int RowsOfNameAndDay = 180;
 
     /// <summary>Writes a history aside and gives it its name when it is complete.</summary>
     /// <param name="folder">must not exist, or be empty</param>
@@ -103,15 +103,16 @@ public static class InventedMarket
             return ([.. year, .. Enumerable.Range(0, names - year.Length).Select(Script.Further)], Script.Year.First, Script.Year.Last);
         }
 
-        int few = wanted < wholeYear / 4 ? 2 : year.Length;
-        int days = (int)Math.Clamp(wanted / ((long)RowsOfNameAndDay * few), 5, 250);
+        // A small market has two payers and the index.
+        ImmutableArray<NameScript> few = wanted < wholeYear / 4 ? [year[0], year[1], year[^1]] : year;
+        int days = (int)Math.Clamp(wanted / ((long)RowsOfNameAndDay * few.Length), 5, 250);
         DateOnly last = Script.Year.First;
         for (int i = 1; i < days; i++)
         {
             last = TradingCalendar.NewYork.NextTradingDay(last);
         }
 
-        return ([.. year.Take(few)], Script.Year.First, last);
+        return (few, Script.Year.First, last);
     }
 
     private static IEnumerable<DateOnly> TradingDays(DateOnly first, DateOnly last)

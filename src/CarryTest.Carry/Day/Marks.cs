@@ -111,7 +111,8 @@ internal sealed class Marks(BookState book, DateOnly today, Func<DateOnly, doubl
         ? (double.IsNaN(touch.Bid) ? 0 : touch.Bid)
         : double.IsNaN(touch.Ask) ? mid : touch.Ask;
 
-    // Beyond what is booked (settled, unsettled, receivable): planned dividends whose ex-date is still to come, and what delivery brings, at tonight's charged rate.
+    // Beyond what is booked (settled, unsettled, receivable): planned dividends whose ex-date is still to come, and what delivery brings, at tonight's charged rate;
+    // less what the plan has set aside for early exercise, which is earned only when none has come.
     private double StillPlanned(Package package, Part part)
     {
         if (!part.Holds)
@@ -121,7 +122,7 @@ internal sealed class Marks(BookState book, DateOnly today, Func<DateOnly, doubl
 
         PackagePlan plan = package.Plan;
         Side side = plan.Terms.Kind.Funding;
-        double worth = 0;
+        double worth = -part.Plan.Allowance.ToDouble() * book.Charged.Discount(today, plan.Dates.DeliverySettles, side);
         foreach (PlannedFlow flow in part.Plan.Flows)
         {
             bool later = flow.Of == FlowOf.Dividends ? flow.ExOn > today : flow.On >= plan.Dates.DeliverySettles;

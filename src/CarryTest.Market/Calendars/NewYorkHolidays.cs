@@ -2,7 +2,7 @@ namespace CarryTest.Market.Calendars;
 
 /// <summary>
 /// The closed days of the New York exchange, computed by year from its holiday rules, with the closures since 2001 that no rule gives;
-/// and the days on which it trades while banks are closed.
+/// and the days on which it trades while banks are closed. The rules are those since 1981; closures before 2001 that no rule gives are not listed.
 /// </summary>
 internal static class NewYorkHolidays
 {
@@ -13,8 +13,16 @@ internal static class NewYorkHolidays
         new(2004, 6, 11), new(2007, 1, 2), new(2012, 10, 29), new(2012, 10, 30), new(2018, 12, 5), new(2025, 1, 9),
     ];
 
+    // Banks have kept it since 1986, the exchange since 1998.
+    private const int BanksFirstMartinLutherKingDay = 1986;
     private const int FirstMartinLutherKingDay = 1998;
     private const int FirstJuneteenth = 2022;
+
+    // To 2012 a fourth of July on a Thursday shortened the Friday after it; since then the Wednesday before it. From memory.
+    private const int FirstShortWednesdayBeforeTheFourth = 2013;
+
+    // The Friday after a Christmas on a Thursday, once. From memory.
+    private static readonly DateOnly OneOffEarlyClose = new(2003, 12, 26);
 
     /// <summary>Weekdays of a year on which the exchange is closed.</summary>
     public static IEnumerable<DateOnly> Closed(int year)
@@ -28,7 +36,7 @@ internal static class NewYorkHolidays
 
         if (year >= FirstMartinLutherKingDay)
         {
-            yield return NthWeekday(year, 1, DayOfWeek.Monday, 3);
+            yield return MartinLutherKingDay(year);
         }
 
         yield return NthWeekday(year, 2, DayOfWeek.Monday, 3);
@@ -52,9 +60,17 @@ internal static class NewYorkHolidays
         }
     }
 
-    /// <summary>Days of a year on which the exchange trades and banks are closed: Columbus Day and Veterans Day, by the Federal Reserve's rule (a Sunday moves to Monday, a Saturday does not move).</summary>
+    /// <summary>
+    /// Days of a year on which the exchange trades and banks are closed: Columbus Day and Veterans Day, by the Federal Reserve's rule (a Sunday moves to Monday, a Saturday does not move),
+    /// and Martin Luther King Day before the exchange kept it.
+    /// </summary>
     public static IEnumerable<DateOnly> BankOnly(int year)
     {
+        if (year is >= BanksFirstMartinLutherKingDay and < FirstMartinLutherKingDay)
+        {
+            yield return MartinLutherKingDay(year);
+        }
+
         yield return NthWeekday(year, 10, DayOfWeek.Monday, 2);
         var veterans = new DateOnly(year, 11, 11);
         yield return veterans.DayOfWeek == DayOfWeek.Sunday ? veterans.AddDays(1) : veterans;
@@ -65,16 +81,11 @@ internal static class NewYorkHolidays
     {
         yield return Thanksgiving(year).AddDays(1);
         var july3 = new DateOnly(year, 7, 3);
-        if (july3.DayOfWeek is not DayOfWeek.Friday)
+        yield return july3.DayOfWeek == DayOfWeek.Wednesday && year < FirstShortWednesdayBeforeTheFourth ? july3.AddDays(2) : july3;
+        yield return new DateOnly(year, 12, 24);
+        if (year == OneOffEarlyClose.Year)
         {
-            // On a Friday the fourth is a Saturday and its holiday is observed on the third.
-            yield return july3;
-        }
-
-        var christmasEve = new DateOnly(year, 12, 24);
-        if (christmasEve.DayOfWeek is not DayOfWeek.Friday)
-        {
-            yield return christmasEve;
+            yield return OneOffEarlyClose;
         }
     }
 
@@ -84,6 +95,8 @@ internal static class NewYorkHolidays
         DayOfWeek.Sunday => day.AddDays(1),
         _ => day,
     };
+
+    private static DateOnly MartinLutherKingDay(int year) => NthWeekday(year, 1, DayOfWeek.Monday, 3);
 
     private static DateOnly Thanksgiving(int year) => NthWeekday(year, 11, DayOfWeek.Thursday, 4);
 

@@ -1,5 +1,3 @@
-using System.Collections.Concurrent;
-
 namespace CarryTest.Market.Calendars;
 
 /// <summary>Trading days, settlement days and session hours of an exchange. Days are the exchange's local dates. Safe for use by several threads.</summary>
@@ -11,7 +9,9 @@ public sealed class TradingCalendar
     private static readonly TimeOnly ClosesEarly = new(13, 0);
 
     private readonly Func<int, DayKind[]> _yearOf;
-    private readonly ConcurrentDictionary<int, DayKind[]> _years = [];
+
+    // By year, filled when a year is first asked for. Two threads may fill one year: they write the same content.
+    private readonly DayKind[]?[] _years = new DayKind[]?[DateOnly.MaxValue.Year + 1];
 
     private TradingCalendar(string name, Func<int, DayKind[]> yearOf)
     {
@@ -42,7 +42,7 @@ public sealed class TradingCalendar
     }
 
     /// <summary>The exchange's local date of an instant.</summary>
-    /// <param name="utc">UTC</param>
+    /// <param name="utc">UTC, whatever its kind says</param>
     public static DateOnly LocalDate(DateTime utc) => DateOnly.FromDateTime(TimeZoneInfo.ConvertTimeFromUtc(DateTime.SpecifyKind(utc, DateTimeKind.Utc), Exchange));
 
     /// <summary>The instant of a local time, UTC.</summary>
@@ -85,6 +85,9 @@ public sealed class TradingCalendar
         return day;
     }
 
+    /// <summary>The first settlement day after a day.</summary>
+    public DateOnly SettlementDayAfter(DateOnly day) => SettlementDayOnOrAfter(day.AddDays(1));
+
     /// <summary>The day itself, or the first settlement day after it.</summary>
     public DateOnly SettlementDayOnOrAfter(DateOnly day)
     {
@@ -107,14 +110,23 @@ public sealed class TradingCalendar
 
         for (int i = 0; i < n; i++)
         {
-            day = SettlementDayOnOrAfter(day.AddDays(1));
+            day = SettlementDayAfter(day);
         }
 
         return day;
     }
 
-    /// <summary>The regular session of a trading day, in UTC.</summary>
-    public (DateTime OpenUtc, DateTime CloseUtc) RegularSession(DateOnly day) => (ToUtc(day, Opens), ToUtc(day, IsEarlyClose(day) ? ClosesEarly : Closes));
+    /// <summary>The regular session of a trading day, in UTC: 09:30 to 16:00 in New York, 13:00 on an early close.</summary>
+    /// <exception cref="ArgumentOutOfRangeException">the exchange does not trade on that day</exception>
+    public (DateTime OpenUtc, DateTime CloseUtc) RegularSession(DateOnly day)
+    {
+        if (!IsTradingDay(day))
+        {
+            throw new ArgumentOutOfRangeException(nameof(day), day, $"{Name} does not trade on that day: it has no session");
+        }
+
+        return (ToUtc(day, Opens), ToUtc(day, IsEarlyClose(day) ? ClosesEarly : Closes));
+    }
 
     /// <summary>The standard monthly expiry: the third Friday, or the trading day before when that is a holiday.</summary>
     public DateOnly StandardExpiry(int year, int month)
@@ -146,5 +158,16 @@ public sealed class TradingCalendar
         return kinds;
     }
 
-    private DayKind KindOf(DateOnly day) => _years.GetOrAdd(day.Year, _yearOf)[day.DayOfYear - 1];
+    private DayKind KindOf(DateOnly day)
+    {
+        DayKind[] year = Volatile.Read(ref _years[day.Year]) ?? Fill(day.Year);
+        return year[day.DayOfYear - 1];
+    }
+
+    private DayKind[] Fill(int year)
+    {
+        DayKind[] kinds = _yearOf(year);
+        Volatile.Write(ref _years[year], kinds);
+        return kinds;
+    }
 }

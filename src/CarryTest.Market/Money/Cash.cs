@@ -21,23 +21,15 @@ public readonly record struct Cash(long Cents) : IComparable<Cash>
     /// <summary>The one place where a computed amount becomes money: to the nearest cent, half to even.</summary>
     /// <param name="currency">an amount in currency; not NaN, not infinite, below 9e13</param>
     /// <exception cref="ArgumentOutOfRangeException">the amount is NaN, infinite or too large</exception>
-    public static Cash Round(double currency)
-    {
-        if (!(Math.Abs(currency) < 9e13))
-        {
-            throw new ArgumentOutOfRangeException(nameof(currency), currency, "not an amount of money");
-        }
-
-        return new Cash((long)Math.Round(Math.Round(currency * 100.0, DigitsOfACent), MidpointRounding.ToEven));
-    }
+    public static Cash Round(double currency) => new((long)Math.Round(CentsOf(currency), MidpointRounding.ToEven));
 
     /// <summary>To the next cent away from zero: the rounding of fees that are rounded up.</summary>
-    /// <param name="currency">an amount in currency</param>
+    /// <param name="currency">an amount in currency; not NaN, not infinite, below 9e13</param>
+    /// <exception cref="ArgumentOutOfRangeException">the amount is NaN, infinite or too large</exception>
     public static Cash RoundUp(double currency)
     {
-        double cents = Math.Round(Math.Abs(currency) * 100.0, DigitsOfACent);
-        long whole = (long)Math.Ceiling(cents);
-        return new Cash(currency < 0 ? -whole : whole);
+        double cents = CentsOf(currency);
+        return new Cash((long)(cents < 0 ? Math.Floor(cents) : Math.Ceiling(cents)));
     }
 
     /// <summary>The part of this amount that falls on <paramref name="part"/> of <paramref name="whole"/> units, half to even.</summary>
@@ -50,6 +42,16 @@ public readonly record struct Cash(long Cents) : IComparable<Cash>
 
         decimal cents = decimal.Round((decimal)Cents * part / whole, 0, MidpointRounding.ToEven);
         return new Cash((long)cents);
+    }
+
+    private static double CentsOf(double currency)
+    {
+        if (!(Math.Abs(currency) < 9e13))
+        {
+            throw new ArgumentOutOfRangeException(nameof(currency), currency, "not an amount of money");
+        }
+
+        return Math.Round(currency * 100.0, DigitsOfACent);
     }
 
     /// <summary>Adds.</summary>

@@ -36,18 +36,7 @@ public sealed class Knowledge
     public static Knowledge Of(ReferenceTables tables, DateOnly date, DateTime instantUtc) => new(tables, date, instantUtc);
 
     /// <summary>The newest overnight rate that is known, a fraction a year; null where none is.</summary>
-    public double? OvernightRate
-    {
-        get
-        {
-            foreach ((int days, double rate) in Curve)
-            {
-                return days == 1 ? rate : null;
-            }
-
-            return null;
-        }
-    }
+    public double? OvernightRate => Curve is [(1, double rate), ..] ? rate : null;
 
     /// <summary>For each term the newest known rate, by term; simple rates on actual/360.</summary>
     public ImmutableArray<(int Days, double Rate)> Curve => _curve.Value;
@@ -69,20 +58,8 @@ public sealed class Knowledge
         return known;
     }
 
-    /// <summary>The newest known borrow terms; null where none are known.</summary>
-    public BorrowTerms? Borrow(string symbol)
-    {
-        ImmutableArray<BorrowTerms> rows = _tables.BorrowRowsOf(symbol);
-        for (int i = rows.Length - 1; i >= 0; i--)
-        {
-            if (IsKnown(rows[i].KnownAt, rows[i].AsOf))
-            {
-                return rows[i];
-            }
-        }
-
-        return null;
-    }
+    /// <summary>The newest borrow terms that are known and dated no later than today; null where there are none.</summary>
+    public BorrowTerms? Borrow(string symbol) => Newest(_tables.BorrowRowsOf(symbol), b => b.AsOf, b => b.KnownAt);
 
     /// <summary>The corporate actions that are known, by effective date.</summary>
     public IReadOnlyList<CorporateAction> CorporateActions(string symbol) =>
@@ -108,20 +85,30 @@ public sealed class Knowledge
 
     private ImmutableArray<(int Days, double Rate)> NewestByTerm()
     {
-        var newest = new SortedDictionary<int, (DateOnly AsOf, double Rate)>();
-        foreach (RateQuote row in _tables.RatesByDate)
+        ImmutableArray<(int, double)>.Builder curve = ImmutableArray.CreateBuilder<(int, double)>();
+        foreach (ImmutableArray<RateQuote> rows in _tables.RatesByTerm)
         {
-            if (row.AsOf > Date)
+            if (Newest(rows, r => r.AsOf, r => r.KnownAt) is { } row)
             {
-                break;
-            }
-
-            if (IsKnown(row.KnownAt, row.AsOf))
-            {
-                newest[row.Days] = (row.AsOf, row.Rate);
+                curve.Add((row.Days, row.Rate));
             }
         }
 
-        return [.. newest.Select(p => (p.Key, p.Value.Rate))];
+        return curve.ToImmutable();
+    }
+
+    // A row dated later than today says what will hold, even where it is known already; the newest of the others holds.
+    private T? Newest<T>(ImmutableArray<T> rows, Func<T, DateOnly> dateOf, Func<T, DateTime?> knownAtOf)
+        where T : class
+    {
+        for (int i = ReferenceTables.CountTo(rows, Date, dateOf) - 1; i >= 0; i--)
+        {
+            if (IsKnown(knownAtOf(rows[i]), dateOf(rows[i])))
+            {
+                return rows[i];
+            }
+        }
+
+        return null;
     }
 }

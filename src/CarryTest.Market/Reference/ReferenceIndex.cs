@@ -2,6 +2,7 @@ using System.Collections.Frozen;
 using System.Collections.Immutable;
 using CarryTest.Market.Contracts;
 using CarryTest.Market.Faults;
+using CarryTest.Market.Words;
 
 namespace CarryTest.Market.Reference;
 
@@ -14,26 +15,41 @@ internal sealed class ReferenceIndex
         Roots = Keyed("roots", tables.Roots, r => r.Root, r => r.Root);
         foreach (OptionRoot root in tables.Roots)
         {
-            CheckName("roots", $"root {root.Root}", root.Symbol);
+            CheckSymbol("roots", root.Root, root.Symbol);
         }
 
-        Rates = [.. Unique("rates", tables.Rates, r => (r.AsOf, r.Days), r => $"as_of {r.AsOf:yyyy-MM-dd}, days {r.Days}").OrderBy(r => r.AsOf).ThenBy(r => r.Days)];
-        Overnight = [.. Rates.Where(r => r.Days == 1)];
-        Dividends = ByName(
-            "dividends", Unique("dividends", tables.Dividends, d => (d.Symbol, d.ExOn, d.Kind), d => $"{d.Symbol}, ex_on {d.ExOn:yyyy-MM-dd}"), d => d.Symbol, d => d.ExOn);
-        Borrow = ByName("borrow", Unique("borrow", tables.Borrow, b => (b.Symbol, b.AsOf), b => $"{b.Symbol}, as_of {b.AsOf:yyyy-MM-dd}"), b => b.Symbol, b => b.AsOf);
-        Actions = ByName("corporate_actions", tables.CorporateActions, a => a.Symbol, a => a.EffectiveOn);
-        Settlements = Keyed("settlements", tables.Settlements, s => (s.Root, s.Expiry), s => $"{s.Root}, expiry {s.Expiry:yyyy-MM-dd}")
-            .ToFrozenDictionary(p => p.Key, p => p.Value.Price);
-        Closes = Keyed("closes", tables.Closes, c => (c.Symbol, c.Date), c => $"{c.Symbol}, date {c.Date:yyyy-MM-dd}").ToFrozenDictionary(p => p.Key, p => p.Value.Close);
+        Dividends = ByName("dividends", tables.Dividends, d => (d.Symbol, d.ExOn, d.Kind), d => $"{d.Symbol}, ex_on {d.ExOn:O}, {d.Kind.Word()}", d => d.Symbol);
+        Borrow = ByName("borrow", tables.Borrow, b => (b.Symbol, b.AsOf), b => $"{b.Symbol}, as_of {b.AsOf:O}", b => b.Symbol);
+        Actions = ByName(
+            "corporate_actions", tables.CorporateActions, a => (a.Symbol, a.EffectiveOn, a.Kind), a => $"{a.Symbol}, effective_on {a.EffectiveOn:O}, {a.Kind.Word()}", a => a.Symbol);
+        RatesByTerm =
+        [
+            .. Unique("rates", tables.Rates, r => (r.Days, r.AsOf), r => $"as_of {r.AsOf:O}, days {r.Days}")
+                .GroupBy(r => r.Days).OrderBy(g => g.Key).Select(g => g.OrderBy(r => r.AsOf).ToImmutableArray()),
+        ];
+        Overnight = RatesByTerm.FirstOrDefault(rows => rows[0].Days == 1, []);
+        foreach (SettlementValue row in tables.Settlements)
+        {
+            CheckRoot("settlements", Words(row), row.Root);
+        }
+
+        foreach (OfficialClose row in tables.Closes)
+        {
+            CheckSymbol("closes", Words(row), row.Symbol);
+        }
+
+        Settlements = Keyed("settlements", tables.Settlements, s => (s.Root, s.Expiry), Words).ToFrozenDictionary(p => p.Key, p => p.Value.Price);
+        Closes = Keyed("closes", tables.Closes, c => (c.Symbol, c.Date), Words).ToFrozenDictionary(p => p.Key, p => p.Value.Close);
     }
 
     public FrozenDictionary<string, Underlying> Underlyings { get; }
 
     public FrozenDictionary<string, OptionRoot> Roots { get; }
 
-    public ImmutableArray<RateQuote> Rates { get; }
+    /// <summary>One array a term, terms ascending; within it by date.</summary>
+    public ImmutableArray<ImmutableArray<RateQuote>> RatesByTerm { get; }
 
+    /// <summary>The term of one day, by date; empty where the table has none.</summary>
     public ImmutableArray<RateQuote> Overnight { get; }
 
     public FrozenDictionary<string, ImmutableArray<Dividend>> Dividends { get; }
@@ -58,7 +74,7 @@ internal sealed class ReferenceIndex
         {
             if (!seen.Add(keyOf(row)))
             {
-                throw new InputException($"reference table `{table}`: the key {words(row)} occurs twice. Keep one of the rows.");
+                throw new InputException($"reference table `{table}`: the key {words(row)} occurs twice. Keep one of its rows.");
             }
 
             list.Add(row);
@@ -67,22 +83,36 @@ internal sealed class ReferenceIndex
         return list;
     }
 
-    private void CheckName(string table, string row, string symbol)
+    private static string Words(SettlementValue row) => $"{row.Root}, expiry {row.Expiry:O}";
+
+    private static string Words(OfficialClose row) => $"{row.Symbol}, date {row.Date:O}";
+
+    private void CheckSymbol(string table, string row, string symbol)
     {
         if (!Underlyings.ContainsKey(symbol))
         {
-            throw new InputException($"reference table `{table}`: {row} names the symbol {symbol}, which the table `underlyings` does not have. Add it there or mend the name.");
+            throw new InputException($"reference table `{table}`, row {row}: the symbol {symbol} is not in the table `underlyings`. Add it there or mend the name.");
         }
     }
 
-    private FrozenDictionary<string, ImmutableArray<T>> ByName<T>(string table, IEnumerable<T> rows, Func<T, string> nameOf, Func<T, DateOnly> dateOf)
+    private void CheckRoot(string table, string row, string root)
     {
-        ILookup<string, T> groups = rows.ToLookup(nameOf);
-        foreach (IGrouping<string, T> group in groups)
+        if (!Roots.ContainsKey(root))
         {
-            CheckName(table, "a row", group.Key);
+            throw new InputException($"reference table `{table}`, row {row}: the root {root} is not in the table `roots`. Add it there or mend the name.");
+        }
+    }
+
+    private FrozenDictionary<string, ImmutableArray<T>> ByName<TKey, T>(string table, IEnumerable<T> rows, Func<T, TKey> keyOf, Func<T, string> words, Func<T, string> nameOf)
+        where TKey : notnull
+    {
+        List<T> unique = Unique(table, rows, keyOf, words);
+        foreach (T row in unique)
+        {
+            CheckSymbol(table, words(row), nameOf(row));
         }
 
-        return groups.ToFrozenDictionary(g => g.Key, g => g.OrderBy(dateOf).ToImmutableArray());
+        // Within a group the name is the same: what orders it is the rest of the key, its date first.
+        return unique.ToLookup(nameOf).ToFrozenDictionary(g => g.Key, g => g.OrderBy(keyOf).ToImmutableArray());
     }
 }

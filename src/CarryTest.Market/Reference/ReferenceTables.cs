@@ -40,8 +40,8 @@ public sealed class ReferenceTables
     /// <summary>Official closes.</summary>
     public required ImmutableArray<OfficialClose> Closes { get; init; }
 
-    /// <summary>Rates by date and term.</summary>
-    internal ImmutableArray<RateQuote> RatesByDate => _index.Value.Rates;
+    /// <summary>The rates, one array a term, terms ascending; within it by date.</summary>
+    internal ImmutableArray<ImmutableArray<RateQuote>> RatesByTerm => _index.Value.RatesByTerm;
 
     /// <summary>Checks keys and names now instead of at the first look-up.</summary>
     /// <exception cref="InputException">a key occurs twice, or a row names a symbol that the table `underlyings` does not have</exception>
@@ -61,13 +61,13 @@ public sealed class ReferenceTables
     /// <exception cref="InputException">the table does not have it</exception>
     public Underlying UnderlyingOf(string symbol) => _index.Value.Underlyings.TryGetValue(symbol, out Underlying? found)
         ? found
-        : throw new InputException($"reference table `underlyings`: no row for {symbol}. Add one.");
+        : throw new InputException($"reference table `underlyings`: no row for the symbol {symbol}. Add one with its name, kind, calendar and currency, or mend the name.");
 
     /// <summary>The terms of a root.</summary>
     /// <exception cref="InputException">the table does not have it</exception>
     public OptionRoot RootOf(string root) => _index.Value.Roots.TryGetValue(root, out OptionRoot? found)
         ? found
-        : throw new InputException($"reference table `roots`: no row for root {root}, which has a folder under chains/. Add one.");
+        : throw new InputException($"reference table `roots`: no row for the root {root}. Add one with its symbol, exercise, settles and multiplier, or mend the name.");
 
     /// <summary>All dividends of a symbol, by ex-date.</summary>
     public ImmutableArray<Dividend> DividendsOf(string symbol) => _index.Value.Dividends.GetValueOrDefault(symbol, []);
@@ -90,8 +90,8 @@ public sealed class ReferenceTables
     /// <summary>The official close; null where the table has none.</summary>
     public double? CloseOf(string symbol, DateOnly date) => _index.Value.Closes.TryGetValue((symbol, date), out double close) ? close : null;
 
-    private static T? Latest<T>(ImmutableArray<T> rows, DateOnly day, Func<T, DateOnly> dateOf)
-        where T : class
+    /// <summary>How many rows, sorted by date, are dated on or before a day.</summary>
+    internal static int CountTo<T>(ImmutableArray<T> rows, DateOnly day, Func<T, DateOnly> dateOf)
     {
         int low = 0;
         int high = rows.Length;
@@ -101,6 +101,13 @@ public sealed class ReferenceTables
             (low, high) = dateOf(rows[middle]) <= day ? (middle + 1, high) : (low, middle);
         }
 
-        return low == 0 ? null : rows[low - 1];
+        return low;
+    }
+
+    private static T? Latest<T>(ImmutableArray<T> rows, DateOnly day, Func<T, DateOnly> dateOf)
+        where T : class
+    {
+        int count = CountTo(rows, day, dateOf);
+        return count == 0 ? null : rows[count - 1];
     }
 }

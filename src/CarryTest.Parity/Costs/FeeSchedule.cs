@@ -159,105 +159,150 @@ public sealed record CostSettings
     public double SlippageFraction { get; init; }
 }
 
-/// <summary>A dated fee schedule.</summary>
-/// <param name="Rows">as read</param>
-public sealed record FeeSchedule(ImmutableArray<FeeRow> Rows)
+/// <summary>A dated fee schedule. Safe for use by several threads.</summary>
+/// <param name="rows">as read</param>
+public sealed class FeeSchedule(ImmutableArray<FeeRow> rows)
 {
-    private readonly ConcurrentDictionary<(DateOnly TradedOn, DateOnly? KnownOn), int[]> _holding = new();
+    private readonly ConcurrentDictionary<(DateOnly TradedOn, DateOnly? KnownOn), FeeRow[]> _inForce = new();
 
     /// <summary>No fees.</summary>
     public static FeeSchedule None { get; } = new([]);
+
+    /// <summary>The rows, as read.</summary>
+    public ImmutableArray<FeeRow> Rows => rows;
 
     /// <summary>The fees of one order by the rows in force.</summary>
     /// <param name="items">the legs of the order</param>
     /// <param name="tradedOn">the trade date; exercise date for deliveries</param>
     /// <param name="knownOn">plans: only rows that were known before this date; null: the rows that hold, as the books are charged</param>
     /// <returns>one fee for each leg and line that is not zero, by leg and then by the order of the rows</returns>
+    /// <exception cref="ArgumentOutOfRangeException">a leg has a negative quantity, or a charged one that is not a number</exception>
     public ImmutableArray<Fee> Of(ReadOnlySpan<FeeItem> items, DateOnly tradedOn, DateOnly? knownOn = null)
     {
-        if (Rows.IsEmpty)
+        FeeRow[] inForce = InForce(tradedOn, knownOn);
+        if (inForce.Length == 0)
         {
             return [];
         }
 
-        var fees = new SortedList<(int Item, int Row), Cash>();
-        foreach (int r in Holding(tradedOn, knownOn))
+        var amounts = new Cash[inForce.Length * items.Length];
+        for (int r = 0; r < inForce.Length; r++)
         {
-            Charge(items, r, Rows[r], fees);
+            Charge(items, inForce[r], amounts.AsSpan(r * items.Length, items.Length));
         }
 
-        return [.. fees.Where(f => f.Value != Cash.Zero).Select(f => new Fee(f.Key.Item, Rows[f.Key.Row].Line, f.Value))];
-    }
-
-    private int[] Holding(DateOnly tradedOn, DateOnly? knownOn) =>
-        _holding.GetOrAdd((tradedOn, knownOn), key => [.. Enumerable.Range(0, Rows.Length).Where(r => Holds(Rows[r], key.TradedOn, key.KnownOn))]);
-
-    private static void Charge(ReadOnlySpan<FeeItem> items, int r, FeeRow row, SortedList<(int Item, int Row), Cash> fees)
-    {
-        double order = 0;
-        int first = -1;
+        var fees = ImmutableArray.CreateBuilder<Fee>();
         for (int i = 0; i < items.Length; i++)
         {
-            FeeItem item = items[i];
-            if (item.Applies != row.AppliesTo || (row.Side != FeeSide.Both && row.Side != item.Side))
+            for (int r = 0; r < inForce.Length; r++)
             {
-                continue;
+                Cash amount = amounts[(r * items.Length) + i];
+                if (amount != Cash.Zero)
+                {
+                    fees.Add(new Fee(i, inForce[r].Line, amount));
+                }
             }
-
-            double raw = row.Basis switch
-            {
-                FeeBasis.Contract => row.Rate * item.Contracts,
-                FeeBasis.Share => row.Rate * item.Shares,
-                FeeBasis.Notional => row.Rate * item.Notional,
-                FeeBasis.LineItem => row.Rate,
-                _ => first < 0 ? row.Rate : 0,
-            };
-            first = first < 0 ? i : first;
-            order += raw;
-            fees[(i, r)] = InCents(row.CapBasis == FeeCapBasis.Leg ? Bounded(raw, row) : raw, row);
         }
 
-        if (first < 0 || row.CapBasis != FeeCapBasis.Order)
+        return fees.ToImmutable();
+    }
+
+    private static void Charge(ReadOnlySpan<FeeItem> items, FeeRow row, Span<Cash> amounts)
+    {
+        if (row.CapBasis == FeeCapBasis.Order || row.Basis == FeeBasis.Order)
+        {
+            ChargeOrder(items, row, amounts);
+            return;
+        }
+
+        for (int i = 0; i < items.Length; i++)
+        {
+            if (Falls(row, items[i]))
+            {
+                amounts[i] = InCents(row.Rate * Quantity(row.Basis, items[i]), row);
+            }
+        }
+    }
+
+    // One amount for the whole order: bounded and rounded once, then spread over the legs in proportion to their quantities. What is charged once an order is its first leg's.
+    private static void ChargeOrder(ReadOnlySpan<FeeItem> items, FeeRow row, Span<Cash> amounts)
+    {
+        double total = 0;
+        int first = -1;
+        int last = -1;
+        for (int i = 0; i < items.Length; i++)
+        {
+            if (Falls(row, items[i]) && (first < 0 || row.Basis != FeeBasis.Order))
+            {
+                total += Quantity(row.Basis, items[i]);
+                first = first < 0 ? i : first;
+                last = i;
+            }
+        }
+
+        if (first < 0)
         {
             return;
         }
 
-        // A minimum or cap over the order changes its total; the difference is the first leg's.
-        Cash whole = InCents(Bounded(order, row), row);
-        if (whole != InCents(order, row))
+        Cash whole = InCents(row.Rate * total, row);
+        Cash charged = Cash.Zero;
+        double upTo = 0;
+        for (int i = first; i < last; i++)
         {
-            Cash others = fees.Where(f => f.Key.Row == r && f.Key.Item != first).Total(f => f.Value);
-            fees[(first, r)] = whole - others;
+            upTo += Falls(row, items[i]) ? Quantity(row.Basis, items[i]) : 0;
+            Cash due = Cash.Round(whole.ToDouble() * (upTo / total));
+            amounts[i] = due - charged;
+            charged = due;
         }
+
+        amounts[last] = whole - charged;
     }
 
-    private static double Bounded(double amount, FeeRow row) => Math.Min(Math.Max(amount, row.Minimum ?? amount), row.Cap ?? double.PositiveInfinity);
+    // A leg with nothing of what the fee is proportional to pays nothing, not even the minimum: a cash settlement moves no shares.
+    private static bool Falls(FeeRow row, in FeeItem item) =>
+        item.Applies == row.AppliesTo && (row.Side == FeeSide.Both || row.Side == item.Side) && Quantity(row.Basis, item) != 0;
 
-    private static Cash InCents(double amount, FeeRow row) => row.Rounding == FeeRounding.Up ? Cash.RoundUp(amount) : Cash.Round(amount);
-
-    // The books are charged by the row that holds on the trade date. A plan made on knownOn uses, for a later date, the newest row that was known by then:
-    // a row announced but not in force yet counts, a row nobody had announced does not, and what it replaced is taken to go on.
-    private bool Holds(FeeRow row, DateOnly tradedOn, DateOnly? knownOn)
+    private static double Quantity(FeeBasis basis, in FeeItem item)
     {
-        if (row.From > tradedOn)
+        double quantity = basis switch
+        {
+            FeeBasis.Contract => item.Contracts,
+            FeeBasis.Share => item.Shares,
+            FeeBasis.Notional => item.Notional,
+            _ => item.Contracts != 0 || item.Shares != 0 ? 1 : 0,
+        };
+        return quantity >= 0 ? quantity : throw new ArgumentOutOfRangeException(nameof(item), item, "a leg has contracts, shares and money of 0 or more");
+    }
+
+    private static Cash InCents(double amount, FeeRow row)
+    {
+        double bounded = Math.Min(Math.Max(amount, row.Minimum ?? amount), row.Cap ?? double.PositiveInfinity);
+        return row.Rounding == FeeRounding.Up ? Cash.RoundUp(bounded) : Cash.Round(bounded);
+    }
+
+    private FeeRow[] InForce(DateOnly tradedOn, DateOnly? knownOn) =>
+        rows.IsEmpty ? [] : _inForce.GetOrAdd((tradedOn, knownOn), key => [.. rows.Where(row => key.KnownOn is { } today ? Planned(row, key.TradedOn, today) : Holds(row, key.TradedOn))]);
+
+    private static bool Holds(FeeRow row, DateOnly tradedOn) => row.From <= tradedOn && (row.To is not { } last || tradedOn <= last);
+
+    // A plan made today for a later trade uses the newest row that is known: a row announced but not in force yet counts, a row nobody has announced does not,
+    // and what it replaces is taken to go on. A row that has ended by today has ended.
+    private bool Planned(FeeRow row, DateOnly tradedOn, DateOnly today)
+    {
+        if (row.From > tradedOn || !Known(row, today))
         {
             return false;
         }
 
-        if (knownOn is not { } today)
-        {
-            return row.To is not { } last || tradedOn <= last;
-        }
-
-        return Known(row, today) && (row.To is not { } end || tradedOn <= end || !ReplacementKnown(row, today, tradedOn));
+        return row.To is not { } last || tradedOn <= last || (today <= last && !ReplacementKnown(row, last, tradedOn, today));
     }
 
-    private bool ReplacementKnown(FeeRow row, DateOnly today, DateOnly tradedOn)
+    private bool ReplacementKnown(FeeRow row, DateOnly last, DateOnly tradedOn, DateOnly today)
     {
-        foreach (FeeRow other in Rows)
+        foreach (FeeRow other in rows)
         {
-            if (other.Line == row.Line && other.AppliesTo == row.AppliesTo && other.Basis == row.Basis && other.Side == row.Side
-                && other.From > row.From && other.From <= tradedOn && Known(other, today))
+            if (other.Line == row.Line && other.AppliesTo == row.AppliesTo && other.From > last && other.From <= tradedOn && Known(other, today))
             {
                 return true;
             }
@@ -266,5 +311,5 @@ public sealed record FeeSchedule(ImmutableArray<FeeRow> Rows)
         return false;
     }
 
-    private static bool Known(FeeRow row, DateOnly today) => row.KnownOn is { } known ? known < today : row.From <= today;
+    private static bool Known(FeeRow row, DateOnly today) => row.From <= today || row.KnownOn < today;
 }

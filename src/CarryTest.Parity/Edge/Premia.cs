@@ -84,7 +84,7 @@ public sealed class Premia
     private const double VolatilityStep = 0.001;
     private const double Below = 0.85;
     private const double Above = 1.15;
-    private static readonly GridSize Grid = GridSize.Standard;
+    private static readonly GridSize Grid = GridSize.Fast;
 
     private readonly ConcurrentDictionary<GridKey, Lazy<AmericanSolution>> _solved = new();
     private long _grids;

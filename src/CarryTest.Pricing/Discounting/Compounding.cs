@@ -13,7 +13,7 @@ public static class Compounding
     {
         if (rates.Length != days.Length || rates.IsEmpty)
         {
-            throw new ArgumentException($"Each overnight rate needs its days, found {rates.Length} rates and {days.Length} counts of days.", nameof(days));
+            throw new ArgumentException(FormattableString.Invariant($"Each overnight rate needs its days, found {rates.Length} rates and {days.Length} counts of days."), nameof(days));
         }
 
         double growth = 1;

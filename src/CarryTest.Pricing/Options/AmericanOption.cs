@@ -32,12 +32,12 @@ public static class AmericanOption
         OptionTerms terms = OptionTerms.Checked(right, strike, years, rate, yield, volatility);
         if (!(spotLow > 0) || !(spotHigh >= spotLow) || double.IsPositiveInfinity(spotHigh))
         {
-            throw new ArgumentException($"The range of spots runs from above 0 upwards, found {spotLow} to {spotHigh}.", nameof(spotLow));
+            throw new ArgumentException(FormattableString.Invariant($"The range of spots runs from above 0 upwards, found {spotLow} to {spotHigh}."), nameof(spotLow));
         }
 
         if (size.SpaceSteps < 20 || size.TimeSteps < 4)
         {
-            throw new ArgumentException($"A grid has 20 steps of space and 4 of time at least, found {size}.", nameof(size));
+            throw new ArgumentException(FormattableString.Invariant($"A grid has 20 steps of space and 4 of time at least, found {size}."), nameof(size));
         }
 
         Span<CashDividend> kept = dividends.Length <= DividendsOnStack

@@ -45,7 +45,7 @@ public sealed class AmericanSolution
     {
         if (!(spot >= SpotLow && spot <= SpotHigh))
         {
-            throw new ArgumentOutOfRangeException(nameof(spot), spot, $"The option was solved for spots from {SpotLow} to {SpotHigh}.");
+            throw new ArgumentOutOfRangeException(nameof(spot), spot, FormattableString.Invariant($"The option was solved for spots from {SpotLow} to {SpotHigh}."));
         }
 
         return _european(spot);

@@ -17,9 +17,6 @@ namespace CarryTest.Pricing.Options;
 /// </remarks>
 internal sealed class BackwardSweep
 {
-    private const double HalfWidth = 5.5;
-    private const double EdgeWidth = 2;
-    private const int WidestGrid = 8;
     private const int FewestSteps = 4;
 
     /// <summary>A stretch is divided into blocks, each four times as long as the one before, with the same number of steps: the
@@ -28,10 +25,17 @@ internal sealed class BackwardSweep
     private const int BlocksAtExDate = 3;
     private const double BlockRatio = 4;
 
+    /// <summary>Away from expiry the curve is smooth already, and fewer steps will do.</summary>
+    private const double ShareAfterExDate = 0.6;
+
+    /// <summary>Of the steps, for a stretch however short: the exercise price may cross all prices in it.</summary>
+    private const double LeastShare = 0.25;
+
     [ThreadStatic]
     private static BackwardSweep? _own;
 
     private readonly HeatStepper _stepper = new();
+    private readonly GridLayout _layout = new();
     private readonly HeatConvolution _convolution = new();
     private HeatGrid _grid = new();
     private HeatGrid _spare = new();
@@ -41,8 +45,6 @@ internal sealed class BackwardSweep
     private double _drift;
     private double _low;
     private double _high;
-    private double _paid;
-    private double _paidAt;
     private double _waiting;
     private ExerciseEdge _edge;
 
@@ -51,7 +53,7 @@ internal sealed class BackwardSweep
         OptionTerms terms, ReadOnlySpan<CashDividend> dividends, double spotLow, double spotHigh, GridSize size)
     {
         BackwardSweep sweep = _own ??= new BackwardSweep();
-        double scale = Math.Exp((terms.Rate - terms.Yield - (0.5 * terms.Volatility * terms.Volatility)) * terms.Years);
+        double scale = Math.Exp(terms.Drift * terms.Years);
         sweep._low = spotLow * scale;
         sweep._high = spotHigh * scale;
         SpotCurve? premium = null;
@@ -92,9 +94,8 @@ internal sealed class BackwardSweep
         _terms = terms;
         _size = size;
         _stepped = stepped;
-        _drift = terms.Rate - terms.Yield - (0.5 * terms.Volatility * terms.Volatility);
-        _paid = 0;
-        _paidAt = 0;
+        _drift = terms.Drift;
+        _layout.Reset(terms, size.SpaceSteps, stepped, _low);
         _waiting = 0;
         int next = 0;
         double left = 0;
@@ -140,7 +141,7 @@ internal sealed class BackwardSweep
             values[i] = Vector128.Create(_terms.Intrinsic(prices[i]));
         }
 
-        SmoothStrike(0);
+        SmoothStrike(0, double.NegativeInfinity);
     }
 
     /// <summary>Just before the last ex-date, where the closed form is known after it (at expiry: the payoff).</summary>
@@ -157,13 +158,12 @@ internal sealed class BackwardSweep
             values[i] = Vector128.Create(growth * _terms.BlackValue(after, left));
         }
 
-        SmoothStrike(left);
         if (_terms.Right == OptionRight.Put)
         {
             SmoothFloor(amount / toSpot, Vector128.Create(-Math.Exp(_drift * -left) * growth * Math.Exp(-_terms.Yield * left)));
         }
 
-        ExerciseBeforeDrop(left);
+        SmoothStrike(left, ExerciseBeforeDrop(left));
     }
 
     /// <summary>Carries the values over an ex-date onto a grid for the stretch before it.</summary>
@@ -179,10 +179,9 @@ internal sealed class BackwardSweep
             values[i] = after.At(Math.Max(exponentials[i] - drop, 0));
         }
 
-        SmoothStrike(left);
         double lowest = Math.Min(after.Exponentials[0], after.Exponentials[^1]);
         SmoothFloor(drop, (after.At(lowest) - after.At(0)) / lowest);
-        ExerciseBeforeDrop(left);
+        SmoothStrike(left, ExerciseBeforeDrop(left));
     }
 
     /// <summary>Where the dividend takes the whole price, the value after it stops changing.</summary>
@@ -191,73 +190,37 @@ internal sealed class BackwardSweep
     private void SmoothFloor(double drop, Vector128<double> slope) => _grid.SmoothKink(Math.Log(drop), slope * drop, 0);
 
     /// <summary>
-    /// Lays a new grid for the stretch of years left from <paramref name="start"/> to <paramref name="end"/>, over all prices at
-    /// which the option is not a straight line; <paramref name="amount"/> is the dividend just before the start.
+    /// A new grid for the stretch of years left from <paramref name="start"/> to <paramref name="end"/>; <paramref name="amount"/>
+    /// is the dividend just before the start.
     /// </summary>
     private void Lay(double start, double end, double amount)
     {
-        double carry = _terms.Rate - _terms.Yield;
-        _paid = (_paid * Math.Exp(-carry * (start - _paidAt))) + amount;
-        _paidAt = start;
-        _waiting += amount;
-        double deviation = _terms.Volatility * Math.Sqrt(end);
-        double centreAtStart = Centre(start);
-        double centreAtEnd = Centre(end);
-        double low = Math.Min(centreAtStart, centreAtEnd) - (HalfWidth * deviation);
-        double high = Math.Max(centreAtStart, centreAtEnd) + (HalfWidth * deviation);
-        if (_stepped)
-        {
-            // The exercise price stays within sight of the strike, while the centre moves with the forward.
-            double strike = Math.Log(_terms.Strike) + (_drift * end);
-            low = Math.Min(low, strike - (EdgeWidth * deviation));
-            high = Math.Max(high, strike + (EdgeWidth * deviation));
-        }
-
-        double floor = Math.Log(_paid) + (_drift * start);
-        if (_paid > 0 && Math.Log(_low) < floor + (HalfWidth * deviation))
-        {
-            // Spots are asked for at which a dividend may take the whole price.
-            low = Math.Min(low, floor - (HalfWidth * deviation));
-        }
-
-        // Without exercise the curve is smooth, and half the rows are more than enough.
-        int steps = _stepped || _terms.Right == OptionRight.Call ? _size.SpaceSteps : _size.SpaceSteps / 2;
-        double step = 2 * HalfWidth * deviation / steps;
-        int count = (int)Math.Min(Math.Ceiling((high - low) / step), (double)WidestGrid * steps);
-        step = (high - low) / count;
-        int below = (int)Math.Round((centreAtStart - low) / step);
         (_grid, _spare) = (_spare, _grid);
-        if (_terms.Right == OptionRight.Put)
-        {
-            _grid.Lay(centreAtStart - (below * step), step, count + 1);
-        }
-        else
-        {
-            _grid.Lay(centreAtStart + ((count - below) * step), -step, count + 1);
-        }
+        _layout.Pay(start, amount);
+        _layout.Lay(_grid, start, end);
+        _waiting += amount;
     }
 
-    /// <summary>x, some years before expiry, of the price that grows to the strike, less the dividends on the way.</summary>
-    private double Centre(double left)
+    /// <summary>Makes the kink at the strike count as it should, where the option is held there.</summary>
+    /// <param name="left">years left</param>
+    /// <param name="edge">place of the exercise price, in rows: up to it the option is exercised</param>
+    private void SmoothStrike(double left, double edge)
     {
-        double carry = _terms.Rate - _terms.Yield;
-        double price = (_terms.Strike * Math.Exp(-carry * left)) + (_paid * Math.Exp(-carry * (left - _paidAt)));
-        return Math.Log(price) + (_drift * left);
-    }
-
-    private void SmoothStrike(double left)
-    {
-        double x = Centre(left);
+        double x = _layout.Centre(left);
         double jump = Math.Exp(x - (_drift * left) + (_terms.Rate * left));
-        _grid.SmoothKink(x, Vector128.Create(jump), _terms.Volatility * Math.Sqrt(left));
+        bool held = (x - _grid.Start) / _grid.Step > edge;
+        _grid.SmoothKink(x, Vector128.Create(held ? jump : 0, jump), _terms.Volatility * Math.Sqrt(left));
     }
 
-    /// <summary>The holder of a call may exercise just before the drop; the value bends where that begins to pay.</summary>
-    private void ExerciseBeforeDrop(double left)
+    /// <summary>
+    /// The holder of a call may exercise just before the drop; the value bends where that begins to pay. Returns the
+    /// place of that price, in rows.
+    /// </summary>
+    private double ExerciseBeforeDrop(double left)
     {
         if (_terms.Right != OptionRight.Call)
         {
-            return;
+            return double.NegativeInfinity;
         }
 
         Span<Vector128<double>> values = _grid.Values;
@@ -274,18 +237,21 @@ internal sealed class BackwardSweep
             }
             else
             {
-                if (before > 0)
+                if (before <= 0)
                 {
-                    double row = i - 1 + (before / (before - gain));
-                    double jump = (before - gain) / Math.Abs(_grid.Step);
-                    _grid.SmoothKink(_grid.Start + (row * _grid.Step), Vector128.CreateScalar(jump), 0);
+                    return double.NegativeInfinity;
                 }
 
-                return;
+                double row = i - 1 + (before / (before - gain));
+                double jump = (before - gain) / Math.Abs(_grid.Step);
+                _grid.SmoothKink(_grid.Start + (row * _grid.Step), Vector128.CreateScalar(jump), 0);
+                return row;
             }
 
             before = gain;
         }
+
+        return double.PositiveInfinity;
     }
 
     private ExerciseValue ExerciseAt(double left)
@@ -323,7 +289,7 @@ internal sealed class BackwardSweep
         }
 
         double strike = _terms.Strike;
-        if (Math.Log(strike / _waiting) < HalfWidth * _terms.Volatility * Math.Sqrt(_terms.Years))
+        if (Math.Log(strike / _waiting) < GridLayout.HalfWidth * _terms.Volatility * Math.Sqrt(_terms.Years))
         {
             // A dividend that may take the whole price leaves prices at which exercise pays at once.
             return 0;
@@ -351,9 +317,9 @@ internal sealed class BackwardSweep
     /// <summary>A stretch on which exercise may pay at any time.</summary>
     private void Exercise(double start, double end)
     {
-        double share = Math.Sqrt((end - start) / _terms.Years);
+        double share = (start > 0 ? ShareAfterExDate : 1) * Math.Sqrt((end - start) / _terms.Years);
         int blocks = start > 0 ? BlocksAtExDate : BlocksAtExpiry;
-        int steps = (Math.Max(FewestSteps, (int)Math.Ceiling(_size.TimeSteps * share)) + blocks - 1) / blocks;
+        int steps = ((int)Math.Ceiling(_size.TimeSteps * Math.Max(share, LeastShare)) + blocks - 1) / blocks;
         double at = start;
         for (int block = 0; block < blocks; block++)
         {

@@ -13,7 +13,7 @@ internal static class DividendSchedule
         {
             if (!(dividend.Amount >= 0) || double.IsPositiveInfinity(dividend.Amount) || double.IsNaN(dividend.Years))
             {
-                throw new ArgumentException($"A dividend needs a time and an amount of 0 or more, found {dividend}.", nameof(dividends));
+                throw new ArgumentException(FormattableString.Invariant($"A dividend needs a time and an amount of 0 or more, found {dividend}."), nameof(dividends));
             }
 
             if (dividend.Years > 0 && dividend.Years <= years && dividend.Amount > 0)

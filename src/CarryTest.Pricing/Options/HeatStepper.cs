@@ -14,7 +14,7 @@ namespace CarryTest.Pricing.Options;
 /// </remarks>
 internal sealed class HeatStepper
 {
-    private const int RowsFreedAtMost = 24;
+    private const int RowsFreed = 16;
 
     private Vector128<double>[] _eliminated = [];
     private Factor[] _factors = [];
@@ -38,7 +38,12 @@ internal sealed class HeatStepper
         double step = grid.Step;
         double variance = volatility * volatility * years;
         _years = years;
-        _number = variance / (4 * step * step);
+
+        // In the limit of small steps variance/(4 step²). Fitted so that exp(x) grows exactly as it should: where the price is
+        // many strikes, an error of its growth would outweigh the interest on the strike that decides on exercise.
+        double halfSinh = 2 * Math.Sinh(0.5 * step);
+        double second = halfSinh * halfSinh;
+        _number = (1 + (second / 12)) * Math.Tanh(variance / 4) / second;
         _rowVariance = step * step / (volatility * volatility);
         double growth = Math.Exp(variance / 2) - 1;
         _growthAtFirst = growth / (Math.Exp(step) - 1);
@@ -84,14 +89,27 @@ internal sealed class HeatStepper
         (Vector128<double> first, Vector128<double> last) = Ends(u, half);
         last = last.WithElement(0, Math.Max(last[0], exercise.At(ex[^1])));
         Eliminate(u, half, last);
-        if (!half && edge.Row > 0)
-        {
-            AddLossBefore(ex, edge);
-        }
-
         u[0] = first.WithElement(0, Math.Max(first[0], exercise.At(ex[0])));
         u[^1] = last;
-        return SubstituteExercised(u, ex, exercise);
+        if (half || edge.Row == 0)
+        {
+            return SubstituteExercised(u, ex, exercise);
+        }
+
+        // Rows far from the exercise price stay exercised and need no source; further ones are given it only where it came near.
+        int reached = edge.Row + 1;
+        double added = 0;
+        ExerciseEdge after;
+        do
+        {
+            int to = Math.Max(reached - RowsFreed, 1);
+            added = AddLossBefore(ex, edge, reached, to, added);
+            reached = to;
+            after = SubstituteExercised(u, ex, exercise);
+        }
+        while (after.Row <= reached && reached > 1);
+
+        return after;
     }
 
     /// <summary>New values of the end rows, where the value is a straight line in exp(x), which grows in a known way.</summary>
@@ -128,15 +146,20 @@ internal sealed class HeatStepper
     }
 
     /// <summary>
-    /// Adds to lane 0 of the rows eliminated the loss of waiting in the first half of the step, where exercise paid before it:
-    /// in whole from the second row beyond the exercise price on. Rows further in stay exercised and do not need it.
+    /// Adds to lane 0 of the rows eliminated, from below one row down to another, the loss of waiting in the first half of the
+    /// step, where exercise paid before it: in whole from the second row beyond the exercise price on.
     /// </summary>
-    private void AddLossBefore(ReadOnlySpan<double> ex, ExerciseEdge edge)
+    /// <param name="ex">exp(x) of the rows</param>
+    /// <param name="edge">where exercise stopped paying before the step</param>
+    /// <param name="above">row above the first one</param>
+    /// <param name="to">last row</param>
+    /// <param name="added">what was added to the row above</param>
+    /// <returns>what was added to the last row</returns>
+    private double AddLossBefore(ReadOnlySpan<double> ex, ExerciseEdge edge, int above, int to, double added)
     {
         Span<Vector128<double>> z = _eliminated.AsSpan(0, ex.Length);
         ReadOnlySpan<Factor> factors = _factors.AsSpan(0, ex.Length);
-        double added = 0;
-        for (int i = edge.Row; i >= Math.Max(edge.Row - RowsFreedAtMost, 1); i--)
+        for (int i = above - 1; i >= to; i--)
         {
             double share = i == edge.Row ? 0.5 * (1 - edge.Distance) * (1 - edge.Distance)
                 : i == edge.Row - 1 ? 1 - (0.5 * edge.Distance * edge.Distance)
@@ -145,6 +168,8 @@ internal sealed class HeatStepper
             added = Math.FusedMultiplyAdd(factors[i].Share, added, 0.5 * _years * loss * share * factors[i].Inverse);
             z[i] += Vector128.CreateScalar(added);
         }
+
+        return added;
     }
 
     /// <summary>Upwards from a row whose neighbour below is known.</summary>

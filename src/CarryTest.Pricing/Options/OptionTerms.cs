@@ -21,6 +21,9 @@ internal readonly record struct OptionTerms(OptionRight Right, double Strike, do
         return new OptionTerms(right, strike, years, rate, yield, volatility);
     }
 
+    /// <summary>Growth of the logarithm of the price, a year.</summary>
+    public double Drift => Rate - Yield - (0.5 * Volatility * Volatility);
+
     /// <summary>What exercise pays now; negative where it costs.</summary>
     public double Exercise(double spot) => Right == OptionRight.Call ? spot - Strike : Strike - spot;
 
@@ -44,7 +47,7 @@ internal readonly record struct OptionTerms(OptionRight Right, double Strike, do
     {
         if (!holds)
         {
-            throw new ArgumentException($"{name} must be {expected}, found {found}.", name);
+            throw new ArgumentException(FormattableString.Invariant($"{name} must be {expected}, found {found}."), name);
         }
     }
 }

@@ -9,6 +9,11 @@ internal static class AmericanVolatility
     private const double MostDeviation = 8;
     private const double VolatilityTolerance = 1e-7;
 
+    /// <summary>Of the strike: nearer to the value without volatility, the grid cannot tell the prices apart.</summary>
+    private const double GridResolution = 5e-6;
+
+    private const double PriceTolerance = 1e-12;
+
     public static VolatilityResult Of(
         OptionRight right, double price, double spot, double strike, double years, double rate,
         ReadOnlySpan<CashDividend> dividends, GridSize size, double yield)
@@ -19,7 +24,7 @@ internal static class AmericanVolatility
         }
 
         double certain = AmericanOption.Price(right, spot, strike, years, rate, 0, dividends, size, yield);
-        double resolution = 1e-12 * strike;
+        double resolution = GridResolution * strike;
         if (price < certain - resolution)
         {
             return new VolatilityResult(double.NaN, VolatilityFault.BelowIntrinsic);
@@ -49,7 +54,7 @@ internal static class AmericanVolatility
             double value = AmericanOption.Price(right, spot, strike, years, rate, volatility, dividends, size, yield);
             double gap = value - price;
             double vega = EuropeanOption.Vega(forward, strike, discount, volatility * Math.Sqrt(years)) * Math.Sqrt(years);
-            if (Math.Abs(gap) <= resolution)
+            if (Math.Abs(gap) <= PriceTolerance * strike)
             {
                 return new VolatilityResult(volatility, VolatilityFault.None);
             }

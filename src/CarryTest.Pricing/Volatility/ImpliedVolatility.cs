@@ -20,7 +20,7 @@ public static class ImpliedVolatility
             return double.IsNaN(forward + strike + discount + years)
                 ? new VolatilityResult(double.NaN, VolatilityFault.None)
                 : throw new ArgumentException(
-                    $"Forward, strike, discount and years are above 0, found {forward}, {strike}, {discount}, {years}.", nameof(forward));
+                    FormattableString.Invariant($"Forward, strike, discount and years are above 0, found {forward}, {strike}, {discount}, {years}."), nameof(forward));
         }
 
         double intrinsic = Math.Max(right == OptionRight.Call ? forward - strike : strike - forward, 0);
@@ -45,7 +45,8 @@ public static class ImpliedVolatility
     /// <see cref="AmericanOption.Solve"/>.
     /// </summary>
     /// <remarks>
-    /// A price equal to what exercise pays now is reached by every volatility up to some level: 0 is returned.
+    /// A price equal to what exercise at once is worth is reached by every volatility up to some level: 0 is returned, as it is
+    /// within 5e-6 of the strike, which is as near as the grid can tell.
     /// </remarks>
     public static VolatilityResult American(
         OptionRight right, double price, double spot, double strike, double years, double rate,

@@ -7,6 +7,14 @@ internal static class StandardDeviation
 {
     private const int MostSteps = 100;
 
+    /// <summary>Of the deviation: steps square the error, so that after one this small nothing is left to gain.</summary>
+    private const double LastMove = 1e-8;
+
+    /// <summary>Of the value: where the value found vanishes, a step of nothing does not mean that the search is over.</summary>
+    private const double LastMiss = 1e-3;
+
+    private const double Steep = 5;
+
     /// <summary>Standard deviation of the logarithm at which the out-of-the-money option is worth <paramref name="value"/>.</summary>
     /// <param name="value">undiscounted value over the root of forward times strike; from 0 to below exp(x/2)</param>
     /// <param name="x">minus the distance of the logarithms of forward and strike; not above 0</param>
@@ -20,7 +28,7 @@ internal static class StandardDeviation
         // The value bends from convex to concave at this deviation: below it the logarithm of the value is close to -x²/2s²,
         // above it Newton steps on the value itself rise to the root without passing it.
         double turning = Math.Sqrt(-2 * x);
-        double atTurning = turning > 0 ? Value(x, turning) : 0;
+        double atTurning = turning > 0 ? ValueAndSlope(x, turning).Value : 0;
         double bound = Math.Exp(0.5 * x);
         return value < atTurning
             ? Search(value, x, 0, turning, turning, Scale.Low)
@@ -42,8 +50,14 @@ internal static class StandardDeviation
         double target = Transformed(value, x, scale, out _);
         for (int i = 0; i < MostSteps; i++)
         {
-            double found = Value(x, s);
-            double gap = target - Transformed(found, x, scale, out double slope);
+            (double found, double slope) = ValueAndSlope(x, s);
+            double move = (target - Transformed(found, x, scale, out double stretch)) / (stretch * slope);
+            double next = s + move;
+            if (Math.Abs(move) <= LastMove * s && Math.Abs(found - value) <= LastMiss * value)
+            {
+                return next;
+            }
+
             if (found < value)
             {
                 low = s;
@@ -53,13 +67,12 @@ internal static class StandardDeviation
                 high = s;
             }
 
-            double next = s + (gap / (slope * Slope(x, s)));
             if (!(next > low && next < high))
             {
                 next = double.IsPositiveInfinity(high) ? 2 * Math.Max(s, 0.01) : 0.5 * (low + high);
             }
 
-            if (Math.Abs(next - s) <= 1e-14 * next || next.Equals(low) || next.Equals(high))
+            if (next.Equals(low) || next.Equals(high))
             {
                 return next;
             }
@@ -95,17 +108,21 @@ internal static class StandardDeviation
         return fall;
     }
 
-    private static double Value(double x, double s)
+    /// <summary>Value at a deviation, and its change per unit of deviation: one density serves both.</summary>
+    private static (double Value, double Slope) ValueAndSlope(double x, double s)
     {
         double half = 0.5 * s;
         double distance = x / s;
-        return (Math.Exp(0.5 * x) * NormalDistribution.Below(distance + half))
-            - (Math.Exp(-0.5 * x) * NormalDistribution.Below(distance - half));
-    }
+        double slope = NormalDistribution.Density(Math.Sqrt((distance * distance) + (half * half)));
+        if (half + distance > Steep)
+        {
+            // Far above the kink the ratio to the density overflows.
+            double value = (Math.Exp(0.5 * x) * NormalDistribution.Below(distance + half))
+                - (Math.Exp(-0.5 * x) * NormalDistribution.Below(distance - half));
+            return (value, slope);
+        }
 
-    private static double Slope(double x, double s)
-    {
-        double distance = x / s;
-        return NormalDistribution.Density(Math.Sqrt((distance * distance) + (0.25 * s * s)));
+        double ratio = NormalDistribution.BelowOverDensity(distance + half) - NormalDistribution.BelowOverDensity(distance - half);
+        return (slope * ratio, slope);
     }
 }

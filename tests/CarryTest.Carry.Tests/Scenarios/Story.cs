@@ -15,6 +15,7 @@ using CarryTest.Parity.Edge;
 using CarryTest.Parity.Funding;
 using CarryTest.Parity.Packages;
 using CarryTest.Parity.Screening;
+using CarryTest.Testing.Ledgers;
 
 namespace CarryTest.Carry.Tests.Scenarios;
 
@@ -219,31 +220,3 @@ internal sealed class Story
 
 /// <summary>The quotes of one pair; NaN = none.</summary>
 internal sealed record PairQuote(string Expiry, double Strike, double CallBid = double.NaN, double CallAsk = double.NaN, double PutBid = double.NaN, double PutAsk = double.NaN);
-
-/// <summary>Keeps every row.</summary>
-internal sealed class RecordingLedger : ILedger
-{
-    public List<PackageRow> Packages { get; } = [];
-
-    public List<TradeRow> Trades { get; } = [];
-
-    public List<PostingRow> Postings { get; } = [];
-
-    public List<EquityRow> Equity { get; } = [];
-
-    public List<EventRow> Events { get; } = [];
-
-    public List<FunnelRow> Funnel { get; } = [];
-
-    public void Write(PackageRow row) => Packages.Add(row);
-
-    public void Write(TradeRow row) => Trades.Add(row);
-
-    public void Write(PostingRow row) => Postings.Add(row);
-
-    public void Write(EquityRow row) => Equity.Add(row);
-
-    public void Write(EventRow row) => Events.Add(row);
-
-    public void Write(FunnelRow row) => Funnel.Add(row);
-}

@@ -15,7 +15,7 @@ public sealed class AmericanOptionTests
         double black = EuropeanOption.Price(OptionRight.Call, 100 * Math.Exp(rate * 0.5), 100, Math.Exp(-rate * 0.5), 0.2 * Math.Sqrt(0.5));
         Assert.Equal(0.0, solution.Premium(100));
         Assert.Equal(0.0, solution.Premium(499));
-        Assert.Equal(black, solution.American(100), 12);
+        Assert.Equal(black, solution.American(100), 1e-12);
     }
 
     [Theory]
@@ -34,7 +34,7 @@ public sealed class AmericanOptionTests
     {
         // Waiting a year makes the strike dearer by about 3.05; deep in the money that is what exercise today saves.
         double premium = AmericanOption.Premium(OptionRight.Call, 200, 100, 1, -0.03, 0.1, None, GridSize.Standard);
-        Assert.Equal(100 * (Math.Exp(0.03) - 1), premium, 4);
+        Assert.Equal(100 * (Math.Exp(0.03) - 1), premium, 1e-4);
     }
 
     [Theory]
@@ -46,7 +46,7 @@ public sealed class AmericanOptionTests
         CashDividend[] outside = [new(years, 5)];
         double with = AmericanOption.Price(OptionRight.Put, 100, 100, 0.5, 0.04, 0.25, outside, GridSize.Fast);
         double without = AmericanOption.Price(OptionRight.Put, 100, 100, 0.5, 0.04, 0.25, None, GridSize.Fast);
-        Assert.Equal(without, with, 12);
+        Assert.Equal(without, with, 1e-12);
     }
 
     [Fact]
@@ -58,11 +58,11 @@ public sealed class AmericanOptionTests
         double deviation = 0.25 * Math.Sqrt(0.5);
 
         // The European holder gets a price less 4: a strike of 104. The American holder exercises before: a strike of 100.
-        Assert.Equal(EuropeanOption.Price(OptionRight.Call, 100 * growth, 104, 1 / growth, deviation), call.European(100), 4);
-        Assert.Equal(EuropeanOption.Price(OptionRight.Call, 100 * growth, 100, 1 / growth, deviation), call.American(100), 4);
+        Assert.Equal(EuropeanOption.Price(OptionRight.Call, 100 * growth, 104, 1 / growth, deviation), call.European(100), 1e-4);
+        Assert.Equal(EuropeanOption.Price(OptionRight.Call, 100 * growth, 100, 1 / growth, deviation), call.American(100), 1e-4);
 
         AmericanSolution put = AmericanOption.Solve(OptionRight.Put, 100, 0.5, 0.0, 0.25, last, 90, 110, GridSize.Standard);
-        Assert.Equal(EuropeanOption.Price(OptionRight.Put, 100, 104, 1, deviation), put.American(100), 3);
+        Assert.Equal(EuropeanOption.Price(OptionRight.Put, 100, 104, 1, deviation), put.American(100), 1e-3);
     }
 
     [Fact]
@@ -73,8 +73,8 @@ public sealed class AmericanOptionTests
 
         // Exercise just before tomorrow's ex-date: 100 - 60 Z(1/365). European: 100 - 2 Z(1/365) - 60 Z(0.25).
         double tomorrowDiscount = Math.Exp(-0.04 / 365);
-        Assert.Equal(100 - (60 * tomorrowDiscount), call.American(100), 4);
-        Assert.Equal(100 - (2 * tomorrowDiscount) - (60 * Math.Exp(-0.01)), call.European(100), 4);
+        Assert.Equal(100 - (60 * tomorrowDiscount), call.American(100), 1e-4);
+        Assert.Equal(100 - (2 * tomorrowDiscount) - (60 * Math.Exp(-0.01)), call.European(100), 1e-4);
     }
 
     [Fact]
@@ -94,7 +94,7 @@ public sealed class AmericanOptionTests
         CashDividend[] one = [new(0.2, 2)];
         Assert.Equal(
             AmericanOption.Price(OptionRight.Call, 100, 95, 0.5, 0.03, 0.25, one, GridSize.Fast),
-            AmericanOption.Price(OptionRight.Call, 100, 95, 0.5, 0.03, 0.25, two, GridSize.Fast), 12);
+            AmericanOption.Price(OptionRight.Call, 100, 95, 0.5, 0.03, 0.25, two, GridSize.Fast), 1e-12);
     }
 
     [Fact]
@@ -105,12 +105,12 @@ public sealed class AmericanOptionTests
         AmericanSolution call = AmericanOption.Solve(OptionRight.Call, 20, 0.5, 0.04, 0.2, all, 40, 60, GridSize.Standard);
 
         // After the ex-date the price is 0: the put is worth its strike then, at expiry its strike from then on.
-        Assert.Equal(20 * Math.Exp(-0.04 * 0.5), put.European(50), 4);
-        Assert.Equal(20 * Math.Exp(-0.04 * 0.25), put.American(50), 4);
-        Assert.Equal(0, call.European(50), 4);
+        Assert.Equal(20 * Math.Exp(-0.04 * 0.5), put.European(50), 1e-4);
+        Assert.Equal(20 * Math.Exp(-0.04 * 0.25), put.American(50), 1e-4);
+        Assert.Equal(0, call.European(50), 1e-4);
 
         // The call is exercised before the price is gone: at a price without cost of carry but the strike's interest.
-        Assert.Equal(50 - (20 * Math.Exp(-0.04 * 0.25)), call.American(50), 4);
+        Assert.Equal(50 - (20 * Math.Exp(-0.04 * 0.25)), call.American(50), 1e-4);
     }
 
     [Theory]
@@ -133,8 +133,8 @@ public sealed class AmericanOptionTests
             best = Math.Max(best, last);
         }
 
-        Assert.Equal(last, solution.European(spot), 10);
-        Assert.Equal(best, solution.American(spot), 3);
+        Assert.Equal(last, solution.European(spot), 1e-10);
+        Assert.Equal(best, solution.American(spot), 1e-3);
     }
 
     [Fact]
@@ -172,8 +172,8 @@ public sealed class AmericanOptionTests
             foreach (double spot in new[] { 1.0, 3, 40, 80, 92.5, 100, 107.3, 150, 400, 5000 })
             {
                 AmericanSolution narrow = AmericanOption.Solve(right, 100, 0.5, 0.05, 0.25, dividends, spot, spot, GridSize.Standard);
-                Assert.Equal(narrow.American(spot), wide.American(spot), 3);
-                Assert.Equal(narrow.Premium(spot), wide.Premium(spot), 3);
+                Assert.Equal(narrow.American(spot), wide.American(spot), 1e-3);
+                Assert.Equal(narrow.Premium(spot), wide.Premium(spot), 1e-3);
             }
         }
     }

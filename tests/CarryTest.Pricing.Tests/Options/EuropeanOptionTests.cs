@@ -14,22 +14,22 @@ public sealed class EuropeanOptionTests
     [InlineData(OptionRight.Put, 95, 100, 4.75)]
     [InlineData(OptionRight.Put, 105, 100, 0)]
     public void Price_NoDeviation_IsDiscountedPayoff(OptionRight right, double forward, double strike, double expected)
-        => Assert.Equal(expected, EuropeanOption.Price(right, forward, strike, 0.95, 0), 12);
+        => Assert.Equal(expected, EuropeanOption.Price(right, forward, strike, 0.95, 0), 1e-12);
 
     [Theory]
     [InlineData(0)]
     [InlineData(-3)]
     public void Price_ForwardNotAboveZero_IsCertain(double forward)
     {
-        Assert.Equal(0, EuropeanOption.Price(OptionRight.Call, forward, 100, 0.95, 0.3), 12);
-        Assert.Equal(95, EuropeanOption.Price(OptionRight.Put, forward, 100, 0.95, 0.3), 12);
+        Assert.Equal(0, EuropeanOption.Price(OptionRight.Call, forward, 100, 0.95, 0.3), 1e-12);
+        Assert.Equal(95, EuropeanOption.Price(OptionRight.Put, forward, 100, 0.95, 0.3), 1e-12);
     }
 
     [Fact]
     public void Price_InfiniteDeviation_IsUpperBound()
     {
-        Assert.Equal(0.95 * 90, EuropeanOption.Price(OptionRight.Call, 90, 100, 0.95, double.PositiveInfinity), 12);
-        Assert.Equal(0.95 * 100, EuropeanOption.Price(OptionRight.Put, 90, 100, 0.95, double.PositiveInfinity), 12);
+        Assert.Equal(0.95 * 90, EuropeanOption.Price(OptionRight.Call, 90, 100, 0.95, double.PositiveInfinity), 1e-12);
+        Assert.Equal(0.95 * 100, EuropeanOption.Price(OptionRight.Put, 90, 100, 0.95, double.PositiveInfinity), 1e-12);
     }
 
     [Fact]
@@ -44,7 +44,7 @@ public sealed class EuropeanOptionTests
     {
         double call = EuropeanOption.Price(OptionRight.Call, t.Forward, t.Strike, t.Discount, t.Deviation);
         double put = EuropeanOption.Price(OptionRight.Put, t.Forward, t.Strike, t.Discount, t.Deviation);
-        Assert.Equal(t.Discount * (t.Forward - t.Strike), call - put, 10);
+        Assert.Equal(t.Discount * (t.Forward - t.Strike), call - put, 1e-10);
     });
 
     [Fact]
@@ -59,7 +59,7 @@ public sealed class EuropeanOptionTests
         const double Step = 1e-4;
         double up = EuropeanOption.Price(OptionRight.Put, t.Forward + Step, t.Strike, 1, t.Deviation + 0.05);
         double down = EuropeanOption.Price(OptionRight.Put, t.Forward - Step, t.Strike, 1, t.Deviation + 0.05);
-        Assert.Equal((up - down) / (2 * Step), EuropeanOption.ForwardDelta(OptionRight.Put, t.Forward, t.Strike, t.Deviation + 0.05), 6);
+        Assert.Equal((up - down) / (2 * Step), EuropeanOption.ForwardDelta(OptionRight.Put, t.Forward, t.Strike, t.Deviation + 0.05), 1e-6);
     });
 
     [Fact]
@@ -69,7 +69,7 @@ public sealed class EuropeanOptionTests
         double s = t.Deviation + 0.05;
         double up = EuropeanOption.Price(OptionRight.Call, t.Forward, t.Strike, t.Discount, s + Step);
         double down = EuropeanOption.Price(OptionRight.Call, t.Forward, t.Strike, t.Discount, s - Step);
-        Assert.Equal((up - down) / (2 * Step), EuropeanOption.Vega(t.Forward, t.Strike, t.Discount, s), 4);
+        Assert.Equal((up - down) / (2 * Step), EuropeanOption.Vega(t.Forward, t.Strike, t.Discount, s), 1e-4);
     });
 
     [Theory]
@@ -90,6 +90,6 @@ public sealed class EuropeanOptionTests
         Assert.Equal(0, EuropeanOption.Vega(0, 100, 1, 0.3));
 
         // 100 / sqrt(2 pi)
-        Assert.Equal(39.894228, EuropeanOption.Vega(100, 100, 1, 0), 6);
+        Assert.Equal(39.894228, EuropeanOption.Vega(100, 100, 1, 0), 1e-6);
     }
 }
