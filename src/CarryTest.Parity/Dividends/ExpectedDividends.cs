@@ -17,6 +17,7 @@ public readonly record struct ExpectedDividend(DateOnly ExOn, DateOnly CashOn, d
 public static class ExpectedDividends
 {
     private const int AmountsRemembered = 4;
+    private const int DaysOfQuarter = 91;
 
     /// <summary>The dividends with an ex-date after today and not after the horizon, by ex-date.</summary>
     /// <param name="known">all tables as of the day</param>
@@ -40,6 +41,18 @@ public static class ExpectedDividends
         return [.. expected];
     }
 
+    /// <summary>By how much strikes will have fallen on a day, currency per share: the adjusting specials with ex-dates after <paramref name="after"/> and not after <paramref name="until"/>.</summary>
+    public static double StrikesFallBy(ImmutableArray<ExpectedDividend> dividends, DateOnly after, DateOnly until)
+    {
+        double fall = 0;
+        foreach (ExpectedDividend dividend in dividends)
+        {
+            fall += dividend.Adjusts && dividend.ExOn > after && dividend.ExOn <= until ? dividend.Amount : 0;
+        }
+
+        return fall;
+    }
+
     /// <summary>The later of the pay date and the settlement day after the ex-date, rolled to a settlement day: large specials go ex after they are paid.</summary>
     public static DateOnly CashDate(DateOnly paidOn, DateOnly exOn, TradingCalendar calendar)
     {
@@ -57,13 +70,14 @@ public static class ExpectedDividends
         {
             DividendForecastKind.None => [],
             DividendForecastKind.Table => FromTable(known, underlying, settings, rows, horizon),
-            DividendForecastKind.Repeat or DividendForecastKind.SameQuarter => Continued(known, kind, rows, horizon),
+            DividendForecastKind.Repeat or DividendForecastKind.SameQuarter => Continued(known, underlying, kind, rows, horizon),
             _ => throw new ArgumentOutOfRangeException(nameof(settings), kind, "not a forecast from past dividends"),
         };
     }
 
     // Cadence: the median gap of the last four ordinary ex-dates, counted from the last of them, so that rounding to trading days does not add up.
-    private static IEnumerable<ExpectedDividend> Continued(Knowledge known, DividendForecastKind kind, IReadOnlyList<Dividend> rows, DateOnly horizon)
+    private static IEnumerable<ExpectedDividend> Continued(
+        Knowledge known, Underlying underlying, DividendForecastKind kind, IReadOnlyList<Dividend> rows, DateOnly horizon)
     {
         Dividend[] last = [.. rows.Where(r => r.Kind == DividendKind.Ordinary).TakeLast(AmountsRemembered)];
         if (last.Length < 2)
@@ -87,9 +101,8 @@ public static class ExpectedDividends
                 continue;
             }
 
-            double amount = kind == DividendForecastKind.Repeat || last.Length < AmountsRemembered
-                ? newest.Amount
-                : last[(k - 1) % AmountsRemembered].Amount;
+            Dividend model = kind == DividendForecastKind.Repeat || last.Length < AmountsRemembered ? newest : last[(k - 1) % AmountsRemembered];
+            double amount = model.Amount * OldSharesForNew(known, underlying, model.ExOn);
             if (amount > 0)
             {
                 yield return new ExpectedDividend(exOn, CashDate(exOn.AddDays(payLag), exOn, known.Calendar), amount, Declared: false, Adjusts: false);
@@ -105,18 +118,57 @@ public static class ExpectedDividends
         return Math.Max(gap, 1);
     }
 
-    // A declared dividend replaces the row of the table that is nearest to it, within half a quarter.
+    // An amount of before a split was paid on a larger share.
+    private static double OldSharesForNew(Knowledge known, Underlying underlying, DateOnly paidBefore)
+    {
+        double factor = 1;
+        foreach (CorporateAction action in known.CorporateActions(underlying.Symbol))
+        {
+            if (action.Kind == CorporateActionKind.Split && action.EffectiveOn > paidBefore && action.EffectiveOn <= known.Date)
+            {
+                factor *= (double)action.OldShares / action.NewShares;
+            }
+        }
+
+        return factor;
+    }
+
     private static IEnumerable<ExpectedDividend> FromTable(
         Knowledge known, Underlying underlying, DividendSettings settings, IReadOnlyList<Dividend> rows, DateOnly horizon)
     {
-        const int HalfQuarter = 45;
-        foreach (ForecastRow row in settings.Table)
+        ForecastRow[] table = [.. settings.Table.Where(r => r.Symbol == underlying.Symbol && r.KnownOn < known.Date).OrderBy(r => r.ExOn)];
+        bool[] replaced = Replaced(table, rows);
+        for (int i = 0; i < table.Length; i++)
         {
-            if (row.Symbol == underlying.Symbol && row.KnownOn < known.Date && row.ExOn > known.Date && row.ExOn <= horizon
-                && !rows.Any(r => Math.Abs(r.ExOn.DayNumber - row.ExOn.DayNumber) <= HalfQuarter))
+            ForecastRow row = table[i];
+            if (!replaced[i] && row.ExOn > known.Date && row.ExOn <= horizon)
             {
                 yield return new ExpectedDividend(row.ExOn, CashDate(row.PaidOn, row.ExOn, known.Calendar), row.Amount, Declared: false, Adjusts: false);
             }
         }
+    }
+
+    // A declared ordinary dividend replaces the row of the table whose ex-date is nearest to its own, within half a cadence.
+    private static bool[] Replaced(ForecastRow[] table, IReadOnlyList<Dividend> rows)
+    {
+        var replaced = new bool[table.Length];
+        Dividend[] ordinary = [.. rows.Where(r => r.Kind == DividendKind.Ordinary)];
+        int halfCadence = (ordinary.Length < 2 ? DaysOfQuarter : MedianGap([.. ordinary.TakeLast(AmountsRemembered)])) / 2;
+        foreach (Dividend row in ordinary)
+        {
+            int nearest = -1;
+            for (int i = 0; i < table.Length; i++)
+            {
+                int distance = Math.Abs(table[i].ExOn.DayNumber - row.ExOn.DayNumber);
+                nearest = distance <= halfCadence && (nearest < 0 || distance < Math.Abs(table[nearest].ExOn.DayNumber - row.ExOn.DayNumber)) ? i : nearest;
+            }
+
+            if (nearest >= 0)
+            {
+                replaced[nearest] = true;
+            }
+        }
+
+        return replaced;
     }
 }

@@ -171,8 +171,13 @@ public static class EarlyExercise
                 continue;
             }
 
+            // An expiry that does not list the strike says nothing of it: the next one does.
             int row = chain.Row(slice.Expiry, strike);
-            return row < 0 ? double.NaN : Value(chain.Option(row, Right.Put), useBid);
+            double put = row < 0 ? double.NaN : Value(chain.Option(row, Right.Put), useBid);
+            if (!double.IsNaN(put))
+            {
+                return put;
+            }
         }
 
         return double.NaN;

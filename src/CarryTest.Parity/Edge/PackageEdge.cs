@@ -25,6 +25,10 @@ public static class PackageEdge
         long shares = (long)request.Units * terms.Root.Multiplier;
         ImmutableArray<ExpectedDividend> dividends = [.. request.Dividends.Where(d => d.ExOn > dates.TradedOn && d.ExOn <= dates.Expiry)];
 
+        double strikesFallBy = ExpectedDividends.StrikesFallBy(dividends, dates.TradedOn, dates.Expiry);
+        double paysAtExpiry = terms.Kind.PaysAtExpiry(terms.Low.PerShare - strikesFallBy, terms.High.PerShare - strikesFallBy);
+        double delivered = Math.Abs(paysAtExpiry);
+
         var flows = new List<PlannedFlow>();
         AddFill(flows, request, shares);
         if (terms.Kind.HasStock)
@@ -32,7 +36,7 @@ public static class PackageEdge
             AddDividends(flows, request, dividends, shares);
         }
 
-        AddDelivery(flows, request, shares);
+        AddDelivery(flows, request, shares, paysAtExpiry, strikesFallBy);
         PlannedFlow[] byDate = [.. flows.OrderBy(f => f.On)];
         PlannedBorrow borrow = BorrowOf(request, shares);
 
@@ -64,10 +68,11 @@ public static class PackageEdge
             PremiumLongCounted = request.PremiumLongCounted,
             EdgePerShare = edge,
             CostsPerShare = costs / shares,
-            BpsPerYear = 10_000 * edge / (terms.Delivered * toDelivery * year),
-            ImpliedRate = ImpliedRate(request, dividends, borrow, shares, calendar) / year,
+            BpsPerYear = 10_000 * edge / (delivered * toDelivery * year),
+            ImpliedRate = ImpliedRate(request, paysAtExpiry, dividends, borrow, shares, calendar) / year,
             FundingRate = ((1 / overLife) - 1) / year,
             DiscountToDelivery = toDelivery,
+            Delivered = delivered,
         };
     }
 
@@ -131,7 +136,7 @@ public static class PackageEdge
     }
 
     // A conversion or reversal ends in one exercise or assignment; a box in two, whatever the price: one buys at a strike, one sells at the other.
-    private static void AddDelivery(List<PlannedFlow> flows, PlanRequest request, long shares)
+    private static void AddDelivery(List<PlannedFlow> flows, PlanRequest request, long shares, double paysAtExpiry, double strikesFallBy)
     {
         PackageTerms terms = request.Terms;
         DateOnly on = request.Dates.DeliverySettles;
@@ -140,11 +145,11 @@ public static class PackageEdge
         {
             if (leg.Of == LegOf.Call)
             {
-                items.Add(DeliveryItem(terms.Root, request.Units, terms.StrikeOf(leg).PerShare, sellsStock: leg.Sign < 0));
+                items.Add(DeliveryItem(terms.Root, request.Units, terms.StrikeOf(leg).PerShare - strikesFallBy, sellsStock: leg.Sign < 0));
             }
         }
 
-        flows.Add(new PlannedFlow(on, Cash.Round(terms.PaysAtExpiry * shares), FlowOf.Principal));
+        flows.Add(new PlannedFlow(on, Cash.Round(paysAtExpiry * shares), FlowOf.Principal));
         foreach (Fee fee in request.Fees.Of([.. items], request.Dates.Expiry, request.Dates.TradedOn))
         {
             flows.Add(new PlannedFlow(on, -fee.Amount, FlowOf.Fees));
@@ -178,7 +183,7 @@ public static class PackageEdge
 
     // What is paid at o against what is got at x, dividends and borrow brought to o at the benchmark. Returns growth less 1, over the life.
     private static double ImpliedRate(
-        PlanRequest request, ImmutableArray<ExpectedDividend> dividends, PlannedBorrow borrow, long shares, TradingCalendar calendar)
+        PlanRequest request, double paysAtExpiry, ImmutableArray<ExpectedDividend> dividends, PlannedBorrow borrow, long shares, TradingCalendar calendar)
     {
         PackageTerms terms = request.Terms;
         DateOnly from = request.Dates.PremiumSettles;
@@ -190,7 +195,7 @@ public static class PackageEdge
 
         if (!terms.Kind.HasStock)
         {
-            return (terms.PaysAtExpiry / paid) - 1;
+            return (paysAtExpiry / paid) - 1;
         }
 
         double value = 0;
@@ -201,7 +206,7 @@ public static class PackageEdge
 
         double borrowWorth = borrow.Shares == 0 ? 0 : BorrowWorth(borrow, request.Benchmark, from, Side.Credit, calendar) / shares;
         return terms.Kind.Legs[0].Sign > 0
-            ? (terms.PaysAtExpiry / (paid - value)) - 1
-            : (terms.PaysAtExpiry / (paid + value + borrowWorth)) - 1;
+            ? (paysAtExpiry / (paid - value)) - 1
+            : (paysAtExpiry / (paid + value + borrowWorth)) - 1;
     }
 }

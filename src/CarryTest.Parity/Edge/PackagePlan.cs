@@ -87,6 +87,9 @@ public sealed record PackagePlan
     /// <summary>Z(t,x) on the package's side.</summary>
     public required double DiscountToDelivery { get; init; }
 
+    /// <summary>What delivery pays per share without its sign: the strike or the width of a box, as they will stand at expiry.</summary>
+    public required double Delivered { get; init; }
+
     /// <summary>The same plan with early-exercise premia in its edge.</summary>
     /// <param name="premiumShort">A of the short legs, per share</param>
     /// <param name="premiumLongCounted">what the long legs' right is counted at, per share</param>
@@ -98,7 +101,7 @@ public sealed record PackagePlan
             PremiumShort = premiumShort,
             PremiumLongCounted = premiumLongCounted,
             EdgePerShare = edge,
-            BpsPerYear = 10_000 * edge / (Terms.Delivered * DiscountToDelivery * Dates.FundedDays / 360.0),
+            BpsPerYear = 10_000 * edge / (Delivered * DiscountToDelivery * Dates.FundedDays / 360.0),
         };
     }
 

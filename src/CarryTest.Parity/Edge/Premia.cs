@@ -86,7 +86,7 @@ public sealed class Premia
     private const double Above = 1.15;
     private static readonly GridSize Grid = GridSize.Fast;
 
-    private readonly ConcurrentDictionary<GridKey, AmericanSolution> _solved = new();
+    private readonly ConcurrentDictionary<GridKey, Lazy<AmericanSolution>> _solved = new();
     private long _grids;
 
     /// <summary>Grids solved so far: a function of what was asked, not of the order.</summary>
@@ -111,11 +111,7 @@ public sealed class Premia
         }
 
         double most = PremiumBounds.Upper(Of(right), strike, setting.Years, setting.Rate, setting.Dividends);
-        Touch other = chain.Option(row, right == Right.Call ? Right.Put : Right.Call);
-        double parity = setting.Spot - setting.DividendsWorth - (strike * setting.Discount);
-
-        // Worth without the right: at most parity from the ask of the other option.
-        double european = other.Ask + (right == Right.Call ? parity : -parity);
+        double european = EuropeanAtMost(setting, row, right, strike);
         double least = double.IsNaN(european) ? 0 : PremiumBounds.Lower(Of(right), setting.Spot, strike, Math.Max(european, 0));
         return (Math.Min(least, most), most);
     }
@@ -139,7 +135,10 @@ public sealed class Premia
 
         double volatility = VolatilityAt(setting, row);
         AmericanSolution solution = Solve(setting, chain.Columns.Strike[row], right, volatility);
-        return Math.Max(0, solution.Premium(Math.Clamp(setting.Spot, solution.SpotLow, solution.SpotHigh)));
+        double premium = solution.Premium(Math.Clamp(setting.Spot, solution.SpotLow, solution.SpotHigh));
+
+        // What the quotes themselves prove is never given up to the model, so that no bound refuses what the grid would let through.
+        return Math.Max(premium, Bounds(setting, row, right).Least);
     }
 
     /// <summary>A of an at-the-money option of an expiry as a function of moneyness: A(K) is taken as K/S of the premium of a strike at S with the stock at S S/K. For tests that need many strikes at once.</summary>
@@ -159,6 +158,20 @@ public sealed class Premia
         return k => Math.Max(0, solution.Premium(Math.Clamp(setting.Spot * at / k, solution.SpotLow, solution.SpotHigh)) * k / at);
     }
 
+    // Worth without the right, at most: the ask of the out-of-the-money option of the pair, brought over by parity where it is the other one. NaN unless that option is quoted on both sides.
+    private static double EuropeanAtMost(PremiumSetting setting, int row, Right right, double strike)
+    {
+        Right outOfTheMoney = strike >= setting.Forward ? Right.Call : Right.Put;
+        Touch touch = setting.Chain.Option(row, outOfTheMoney);
+        if (!touch.Quoted || right == outOfTheMoney)
+        {
+            return touch.Quoted ? touch.Ask : double.NaN;
+        }
+
+        double parity = setting.Spot - setting.DividendsWorth - (strike * setting.Discount);
+        return touch.Ask + (right == Right.Call ? parity : -parity);
+    }
+
     private static OptionRight Of(Right right) => right == Right.Call ? OptionRight.Call : OptionRight.Put;
 
     // The range of spots is a function of the strike and of a coarse grid of spots, so that a solution does not depend on which spot asked first.
@@ -167,11 +180,13 @@ public sealed class Premia
         double centre = Math.Exp(Math.Round(Math.Log(setting.Spot) * 20) / 20);
         var key = new GridKey(
             setting.Chain.Root.Root, setting.Label, strike, right, (int)Math.Round(volatility / VolatilityStep), centre, setting.Rate, setting.Fingerprint, setting.TradedOn);
-        return _solved.GetOrAdd(key, k =>
+
+        // Lazy: two books that ask at once must not solve, and count, twice.
+        return _solved.GetOrAdd(key, k => new Lazy<AmericanSolution>(() =>
         {
             Interlocked.Increment(ref _grids);
             return AmericanOption.Solve(Of(right), strike / 1000.0, setting.Years, setting.Rate, k.Volatility * VolatilityStep, setting.Dividends, centre * Below, centre * Above, Grid);
-        });
+        })).Value;
     }
 
     private static double VolatilityAt(PremiumSetting setting, int row)

@@ -68,8 +68,11 @@ public sealed class BelievedFunding : IFunding
     }
 
     /// <summary>The benchmark as known on a day: the curve, without spreads.</summary>
-    public static BelievedFunding Benchmark(Knowledge known) =>
-        new(new FundingAssumption { Kind = FundingKind.Curve, DebitSpreadBps = 0, CreditSpreadBps = 0 }, known);
+    /// <exception cref="InputException">no rate is known</exception>
+    public static BelievedFunding Benchmark(Knowledge known) => known.Curve.IsEmpty
+        ? throw new InputException(
+            $"reference table `rates`: on {known.Date:yyyy-MM-dd} no rate is known, and without a benchmark early exercise cannot be valued, whatever the rule book believes about funding. Add rows dated before that day.")
+        : new BelievedFunding(new FundingAssumption { Kind = FundingKind.Curve, DebitSpreadBps = 0, CreditSpreadBps = 0 }, known);
 
     /// <inheritdoc/>
     public int DaysOfYear { get; }

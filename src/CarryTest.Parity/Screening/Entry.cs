@@ -50,7 +50,9 @@ public sealed class Entry(ParityRules rules, Premia premia)
 
         int low = chain.Row(decided.Terms.Expiry, decided.Terms.Low);
         int high = chain.Row(decided.Terms.Expiry, decided.Terms.High);
-        return low < 0 || high < 0 ? null : decided with { Snapshot = snapshot, Chain = chain, RowLow = low, RowHigh = high };
+        return low < 0 || high < 0
+            ? null
+            : decided with { Snapshot = snapshot, Dates = day.Dates(chain.Root, decided.Terms.Expiry), Chain = chain, RowLow = low, RowHigh = high };
     }
 
     /// <summary>The tests of a fill: leg tests, agreement of the stock, and the edge at what is known now against `refuse_below`.</summary>
@@ -68,7 +70,9 @@ public sealed class Entry(ParityRules rules, Premia premia)
             }
         }
 
-        if (view.First(now.Terms.Kind.Kind) == Stage.Blocked || LegPrices(now).Any(double.IsNaN) || (now.Terms.Kind.HasStock && !view.StockAgrees()))
+        bool stock = now.Terms.Kind.HasStock;
+        bool unknownPremium = double.IsNaN(now.Chain.UnderlyingMid) && now.Chain.Root.Exercise == ExerciseStyle.American;
+        if (view.IsBlocked || LegPrices(now).Any(double.IsNaN) || unknownPremium || (stock && (view.StockQuote != LegTests.Passed || !view.StockAgrees())))
         {
             return new Judgement(Stage.QuoteGone, null);
         }
@@ -107,7 +111,7 @@ public sealed class Entry(ParityRules rules, Premia premia)
         double mid = candidate.Chain.UnderlyingMid;
         bool inRange = terms.Kind.Strikes == 1
             ? rules.Packages.Moneyness.Holds(terms.Low.PerShare / mid)
-            : rules.Packages.BoxWidth.Holds((terms.High.PerShare - terms.Low.PerShare) / mid);
+            : rules.Packages.BoxWidth.Holds((terms.High.Thousandths - terms.Low.Thousandths) / 1000.0 / mid);
         return inRange ? first : (Stage)Math.Min((int)first, (int)Stage.Moneyness);
     }
 
@@ -120,7 +124,7 @@ public sealed class Entry(ParityRules rules, Premia premia)
         }
 
         PackagePlan plan = PlanWithout(candidate, view, units);
-        double least = Thresholds.Least(rules.Entry, candidate.Terms.Delivered * plan.DiscountToDelivery, view.Dates.FundedDays, plan.CostsPerShare);
+        double least = Thresholds.Least(rules.Entry, plan.Delivered * plan.DiscountToDelivery, view.Dates.FundedDays, plan.CostsPerShare);
         (double leastShort, double mostLong) = Bounds(candidate, view);
         if (plan.EdgePerShare + (rules.Entry.LongExerciseValue * mostLong) - leastShort < least)
         {
@@ -133,7 +137,7 @@ public sealed class Entry(ParityRules rules, Premia premia)
             return (Stage.Edge, plan);
         }
 
-        return (plan.EdgePerShare > rules.Entry.TooGood * candidate.Terms.Delivered ? Stage.Sanity : null, plan);
+        return (plan.EdgePerShare > rules.Entry.TooGood * plan.Delivered ? Stage.Sanity : null, plan);
     }
 
     // Without fees, and with the premium's bounds alone: decides most candidates before a plan is made.
@@ -145,7 +149,7 @@ public sealed class Entry(ParityRules rules, Premia premia)
             ? value.Single(kind.Kind, candidate.Chain, candidate.RowLow)
             : value.Box(kind.Kind, candidate.Chain, candidate.RowLow, candidate.RowHigh);
         (double leastShort, double mostLong) = Bounds(candidate, view);
-        double least = Thresholds.Least(rules.Entry, candidate.Terms.Delivered * view.Z(view.Dates.DeliverySettles, kind.Funding), view.Dates.FundedDays);
+        double least = Thresholds.Least(rules.Entry, view.Delivered(candidate.Terms) * view.Z(view.Dates.DeliverySettles, kind.Funding), view.Dates.FundedDays);
         return edge - leastShort + (rules.Entry.LongExerciseValue * mostLong) < least;
     }
 

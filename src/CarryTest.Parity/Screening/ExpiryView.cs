@@ -33,6 +33,8 @@ internal sealed class ExpiryView
         Dividends = [.. AllDividends.Where(d => d.ExOn <= Dates.Expiry)];
         BorrowFee = Known.Borrow(chain.Underlying.Symbol)?.Fee ?? 0;
         StockAgrees = stockAgrees;
+        StockQuote = FirstOfStock(chain, day.InSession(snapshot));
+        StrikesFallBy = ExpectedDividends.StrikesFallBy(Dividends, Dates.TradedOn, Dates.Expiry);
     }
 
     public Chain Chain { get; }
@@ -58,6 +60,12 @@ internal sealed class ExpiryView
     /// <summary>Whether stock and chain agree; looked at only where stock is traded.</summary>
     public Func<bool> StockAgrees { get; }
 
+    /// <summary>The first test that the stock's quote fails: quoted, crossed, stale; <see cref="LegTests.Passed"/> where none does.</summary>
+    public Stage StockQuote { get; }
+
+    /// <summary>By how much listed strikes will have fallen at expiry, currency per share.</summary>
+    public double StrikesFallBy { get; }
+
     /// <summary>Settlement cycles.</summary>
     public SettlementCycle Cycle { get; }
 
@@ -68,25 +76,32 @@ internal sealed class ExpiryView
     public Stage First(Kind kind)
     {
         bool stock = PackageKinds.Of(kind).HasStock;
-        if (!_rules.Packages.Kinds.Contains(kind) || Chain.Root.Adjusted || Dates.LastTraded <= Dates.TradedOn
+        if (stock && StockQuote != LegTests.Passed)
+        {
+            return StockQuote;
+        }
+
+        if (!_rules.Packages.Kinds.Contains(kind) || Chain.Root.Adjusted
             || (stock && (Chain.Underlying.Kind == UnderlyingKind.Index || Chain.Root.CashSettled))
             || (Chain.Root.CashSettled && Chain.Root.Exercise == ExerciseStyle.American))
         {
             return Stage.Tradeable;
         }
 
-        if (!_rules.Packages.DaysToExpiry.Holds(Dates.DaysToExpiry))
+        // What trades for the last time today is not opened, whatever the range says: nothing is left to fund.
+        if (Dates.LastTraded <= Dates.TradedOn || !_rules.Packages.DaysToExpiry.Holds(Dates.DaysToExpiry))
         {
             return Stage.Days;
         }
 
-        return Blocked() ? Stage.Blocked
+        return IsBlocked ? Stage.Blocked
             : NearExDate() ? Stage.ExDateMargin
             : stock && Undeclared() > _rules.Entry.MaxUndeclaredDividend ? Stage.Undeclared
             : LegTests.Passed;
     }
 
-    private bool Blocked() =>
+    /// <summary>Whether the name is blocked, its stock recalled, or a corporate action announced that is still to come.</summary>
+    public bool IsBlocked =>
         _rules.Packages.Block.Contains(Chain.Underlying.Symbol)
         || Known.Borrow(Chain.Underlying.Symbol) is { Recalled: true }
         || Known.CorporateActions(Chain.Underlying.Symbol).Any(a => a.EffectiveOn > Dates.TradedOn);
@@ -95,6 +110,10 @@ internal sealed class ExpiryView
         AllDividends.Any(d => !d.Declared && Math.Abs(d.ExOn.DayNumber - Dates.Expiry.DayNumber) <= _rules.Entry.ExDateMarginDays);
 
     private double Undeclared() => Dividends.Where(d => !d.Declared).Sum(d => d.Amount);
+
+    /// <summary>What delivery pays per share without its sign: the strike or the width, as they will stand at expiry.</summary>
+    public double Delivered(PackageTerms terms) =>
+        Math.Abs(terms.Kind.PaysAtExpiry(terms.Low.PerShare - StrikesFallBy, terms.High.PerShare - StrikesFallBy));
 
     /// <summary>The fast form of the edge at a side.</summary>
     public SyntheticValue ValueAt(Side side)
@@ -105,6 +124,19 @@ internal sealed class ExpiryView
         }
 
         return _credit ??= new SyntheticValue(this, _rules, Side.Credit);
+    }
+
+    private static Stage FirstOfStock(Chain chain, bool inSession)
+    {
+        if (chain.Underlying.Kind == UnderlyingKind.Index)
+        {
+            return LegTests.Passed;
+        }
+
+        return !chain.Stock.Quoted ? Stage.Quoted
+            : chain.UnderlyingBid > chain.UnderlyingAsk ? Stage.Crossed
+            : inSession ? LegTests.Passed
+            : Stage.Stale;
     }
 
     /// <summary>Z from today to a date, at a side.</summary>

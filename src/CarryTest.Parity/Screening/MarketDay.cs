@@ -13,6 +13,7 @@ public sealed class MarketDay
 {
     private readonly ImmutableArray<Knowledge> _known;
     private readonly ImmutableArray<BelievedFunding> _benchmarks;
+    private readonly ImmutableArray<bool> _inSession;
     private readonly Dictionary<(string Root, DateOnly Label), ExpiryTerms> _dates = [];
     private readonly ImmutableArray<ImmutableArray<QuoteAges>> _ages;
     private readonly Dictionary<string, (Chain Chain, QuoteAges Ages)> _last;
@@ -45,6 +46,8 @@ public sealed class MarketDay
 
         _ages = ages.ToImmutable();
         Furthest = furthest.AddDays(DaysBeyondDelivery);
+        (DateTime open, DateTime close) = tables.Calendar.IsTradingDay(day.Date) ? tables.Calendar.RegularSession(day.Date) : (DateTime.MaxValue, DateTime.MinValue);
+        _inSession = [.. day.Snapshots.Select(s => s.At >= open && s.At <= close)];
         _benchmarks = [.. _known.Select(k => BelievedFunding.Benchmark(k).Until(Furthest))];
     }
 
@@ -79,6 +82,9 @@ public sealed class MarketDay
     /// <summary>The benchmark as known at a snapshot: the curve, without spreads.</summary>
     public BelievedFunding Benchmark(int snapshot) => _benchmarks[snapshot];
 
+    /// <summary>Whether a snapshot lies within the regular session, both ends included: outside it a stock quote says nothing of what can be traded.</summary>
+    public bool InSession(int snapshot) => _inSession[snapshot];
+
     /// <summary>The dates of a trade today in an expiry that is quoted today.</summary>
     public ExpiryTerms Dates(OptionRoot root, DateOnly label) => _dates[(root.Root, label)];
 
@@ -86,9 +92,6 @@ public sealed class MarketDay
     /// <param name="snapshot">index of the snapshot</param>
     /// <param name="chain">index of the chain within it</param>
     public QuoteAges Ages(int snapshot, int chain) => _ages[snapshot][chain];
-
-    /// <summary>How long the quotes of a chain have stood.</summary>
-    public QuoteAges Ages(int snapshot, Chain chain) => _ages[snapshot][Day.Snapshots[snapshot].Chains.IndexOf(chain)];
 
     private QuoteAges Age(Chain chain)
     {

@@ -14,11 +14,12 @@ internal static class PairCount
     /// <param name="low">first failing test of each row in the direction in which the lower strike is traded</param>
     /// <param name="high">the same of the higher strike</param>
     /// <param name="expiry">first failing test of the whole expiry</param>
-    /// <param name="width">widths allowed, currency per share</param>
+    /// <param name="width">widths allowed, as fractions of <paramref name="mid"/></param>
+    /// <param name="mid">middle of the underlying, currency per share</param>
     /// <param name="refuse">receives stage and count of the refused</param>
     /// <returns>pairs that pass</returns>
     public static long Count(
-        Chain chain, ExpirySlice slice, ReadOnlySpan<Stage> low, ReadOnlySpan<Stage> high, Stage expiry, Between<double> width, Action<Stage, long> refuse)
+        Chain chain, ExpirySlice slice, ReadOnlySpan<Stage> low, ReadOnlySpan<Stage> high, Stage expiry, Between<double> width, double mid, Action<Stage, long> refuse)
     {
         long left = (long)slice.Count * (slice.Count - 1) / 2;
         foreach (Stage stage in OfLegs)
@@ -28,7 +29,7 @@ internal static class PairCount
                 break;
             }
 
-            long survive = Survivors(chain, slice, low, high, stage, width);
+            long survive = Survivors(chain, slice, low, high, stage, width, mid);
             refuse(stage, left - survive);
             left = survive;
         }
@@ -43,7 +44,7 @@ internal static class PairCount
     }
 
     // Pairs whose legs both fail later than the stage, or not at all; from the stage of widths on, of a width allowed.
-    private static long Survivors(Chain chain, ExpirySlice slice, ReadOnlySpan<Stage> low, ReadOnlySpan<Stage> high, Stage stage, Between<double> width)
+    private static long Survivors(Chain chain, ExpirySlice slice, ReadOnlySpan<Stage> low, ReadOnlySpan<Stage> high, Stage stage, Between<double> width, double mid)
     {
         ReadOnlySpan<int> strikes = chain.Columns.Strike.AsSpan(slice.Start, slice.Count);
         bool bounded = stage >= Stage.Moneyness;
@@ -53,13 +54,13 @@ internal static class PairCount
         int to = 0;
         for (int j = 0; j < strikes.Length; j++)
         {
-            while (to < j && (!bounded || (strikes[j] - strikes[to]) / 1000.0 >= width.Least))
+            while (to < j && (!bounded || (strikes[j] - strikes[to]) / 1000.0 / mid >= width.Least))
             {
                 inWindow += low[to] > stage ? 1 : 0;
                 to++;
             }
 
-            while (bounded && from < to && (strikes[j] - strikes[from]) / 1000.0 > width.Most)
+            while (bounded && from < to && (strikes[j] - strikes[from]) / 1000.0 / mid > width.Most)
             {
                 inWindow -= low[from] > stage ? 1 : 0;
                 from++;

@@ -10,11 +10,24 @@ namespace CarryTest.Parity.Screening;
 /// The screen of a day, shared by all variants: leg tests once a strike, then for each kind the edge without early exercise and without fees, an upper bound of every variant's.
 /// What it drops no variant could want.
 /// </summary>
-/// <param name="variants">the rules of all books; leg tests and quoted prices are those of the first</param>
-public sealed class Screen(IReadOnlyList<ParityRules> variants)
+public sealed class Screen
 {
+    private readonly IReadOnlyList<ParityRules> _variants;
     private Stage[] _sells = [];
     private Stage[] _buys = [];
+
+    /// <summary>Screens for books with these rules.</summary>
+    /// <param name="variants">the rules of all books, at least one; they share the limits of the leg tests</param>
+    /// <exception cref="ArgumentException">there is none, or two differ in a limit that the leg tests read: these need screens of their own</exception>
+    public Screen(IReadOnlyList<ParityRules> variants)
+    {
+        if (variants.Count == 0 || variants.Any(v => LegLimits(v) != LegLimits(variants[0])))
+        {
+            throw new ArgumentException("A screen needs at least one variant, and all of them the same limits of spread and staleness.", nameof(variants));
+        }
+
+        _variants = variants;
+    }
 
     /// <summary>Screens a day.</summary>
     public Shortlist Run(MarketDay day)
@@ -24,13 +37,13 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
         for (int snapshot = 0; snapshot < day.Day.Snapshots.Length; snapshot++)
         {
             var found = new List<Candidate>();
-            BelievedFunding[] believed = [.. variants.Select(v => new BelievedFunding(v.Believed, day.KnownAt(snapshot)).Until(day.Furthest))];
+            BelievedFunding[] believed = [.. _variants.Select(v => new BelievedFunding(v.Believed, day.KnownAt(snapshot)).Until(day.Furthest))];
             ImmutableArray<Chain> chains = day.Day.Snapshots[snapshot].Chains;
             for (int c = 0; c < chains.Length; c++)
             {
                 foreach (ExpirySlice slice in chains[c].Expiries)
                 {
-                    ExpiryView[] views = [.. variants.Select((v, i) => new ExpiryView(v, day, snapshot, chains[c], slice, believed[i], () => true))];
+                    ExpiryView[] views = [.. _variants.Select((v, i) => new ExpiryView(v, day, snapshot, chains[c], slice, believed[i], () => true))];
                     ScreenExpiry(day, snapshot, chains[c], slice, day.Ages(snapshot, c), views, found, funnel);
                 }
             }
@@ -57,8 +70,8 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
         funnel.See(symbol, null, slice.Count);
         for (int i = 0; i < slice.Count; i++)
         {
-            sells[i] = LegTests.First(chain, slice, slice.Start + i, sells: true, variants[0].Entry, ages, day.Session, views[0].Dates);
-            buys[i] = LegTests.First(chain, slice, slice.Start + i, sells: false, variants[0].Entry, ages, day.Session, views[0].Dates);
+            sells[i] = LegTests.First(chain, slice, slice.Start + i, sells: true, _variants[0].Entry, ages, day.Session, views[0].Dates);
+            buys[i] = LegTests.First(chain, slice, slice.Start + i, sells: false, _variants[0].Entry, ages, day.Session, views[0].Dates);
             Stage better = (Stage)Math.Max((int)sells[i], (int)buys[i]);
             if (better <= Stage.Stale)
             {
@@ -75,7 +88,7 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
     private void Singles(
         Kind kind, ReadOnlySpan<Stage> rows, int snapshot, Chain chain, ExpirySlice slice, ExpiryView[] views, List<Candidate> found, FunnelCount funnel)
     {
-        if (!variants.Any(v => v.Packages.Kinds.Contains(kind)))
+        if (!_variants.Any(v => v.Packages.Kinds.Contains(kind)))
         {
             return;
         }
@@ -84,7 +97,7 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
         funnel.See(symbol, kind, slice.Count);
         Span<Stage> expiry = stackalloc Stage[views.Length];
         Stage latest = Latest(kind, views, expiry);
-        SyntheticValue[] values = [.. views.Select((v, i) => new SyntheticValue(v, variants[i], PackageKinds.Of(kind).Funding))];
+        SyntheticValue[] values = [.. views.Select((v, i) => new SyntheticValue(v, _variants[i], PackageKinds.Of(kind).Funding))];
         double mid = chain.UnderlyingMid;
         for (int i = 0; i < rows.Length; i++)
         {
@@ -92,16 +105,16 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
             double strike = chain.Columns.Strike[slice.Start + i] / 1000.0;
             bool inRange = false;
             bool wanted = false;
-            for (int v = 0; v < views.Length && first == LegTests.Passed; v++)
+            for (int v = 0; v < views.Length && first > Stage.Moneyness; v++)
             {
-                bool range = variants[v].Packages.Moneyness.Holds(strike / mid);
+                bool range = _variants[v].Packages.Moneyness.Holds(strike / mid);
                 inRange |= range;
-                wanted |= range && expiry[v] == LegTests.Passed && values[v].SingleInReach(kind, chain, slice.Start + i);
+                wanted |= range && first == LegTests.Passed && expiry[v] == LegTests.Passed && values[v].SingleInReach(kind, chain, slice.Start + i);
             }
 
-            if (first != LegTests.Passed || !wanted)
+            if (!wanted)
             {
-                funnel.Refuse(symbol, kind, first != LegTests.Passed ? first : inRange ? Stage.Edge : Stage.Moneyness, 1);
+                funnel.Refuse(symbol, kind, first <= Stage.Moneyness ? first : !inRange ? Stage.Moneyness : first == LegTests.Passed ? Stage.Edge : first, 1);
                 continue;
             }
 
@@ -114,7 +127,7 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
     private void Boxes(
         Kind kind, ReadOnlySpan<Stage> low, ReadOnlySpan<Stage> high, int snapshot, Chain chain, ExpirySlice slice, ExpiryView[] views, List<Candidate> found, FunnelCount funnel)
     {
-        if (!variants.Any(v => v.Packages.Kinds.Contains(kind)))
+        if (!_variants.Any(v => v.Packages.Kinds.Contains(kind)))
         {
             return;
         }
@@ -123,9 +136,8 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
         funnel.See(symbol, kind, (long)slice.Count * (slice.Count - 1) / 2);
         Span<Stage> expiry = stackalloc Stage[views.Length];
         Stage latest = Latest(kind, views, expiry);
-        double mid = chain.UnderlyingMid;
-        var widest = new Between<double>(variants.Min(v => v.Packages.BoxWidth.Least) * mid, variants.Max(v => v.Packages.BoxWidth.Most) * mid);
-        long pass = PairCount.Count(chain, slice, low, high, latest, widest, (stage, n) => funnel.Refuse(symbol, kind, stage, n));
+        var widest = new Between<double>(_variants.Min(v => v.Packages.BoxWidth.Least), _variants.Max(v => v.Packages.BoxWidth.Most));
+        long pass = PairCount.Count(chain, slice, low, high, latest, widest, chain.UnderlyingMid, (stage, n) => funnel.Refuse(symbol, kind, stage, n));
         long listed = 0;
         if (pass > 0)
         {
@@ -134,7 +146,7 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
             {
                 if (expiry[v] == LegTests.Passed)
                 {
-                    var value = new SyntheticValue(views[v], variants[v], PackageKinds.Of(kind).Funding);
+                    var value = new SyntheticValue(views[v], _variants[v], PackageKinds.Of(kind).Funding);
                     value.BoxesInReach(kind, chain, slice, low, high, pairs);
                 }
             }
@@ -151,6 +163,9 @@ public sealed class Screen(IReadOnlyList<ParityRules> variants)
 
         funnel.Refuse(symbol, kind, Stage.Edge, pass - listed);
     }
+
+    private static (double Spread, double Exempt, int Sessions) LegLimits(ParityRules rules) =>
+        (rules.Entry.MaxSpreadFraction, rules.Entry.MinPriceForSpread, rules.Entry.StaleAfterSessions);
 
     private static Stage Latest(Kind kind, ExpiryView[] views, Span<Stage> expiry)
     {

@@ -80,6 +80,7 @@ internal static class StockAgreement
         double zs = benchmark.Discount(dates.TradedOn, dates.StockSettles, Side.Credit);
         double zo = benchmark.Discount(dates.TradedOn, dates.PremiumSettles, Side.Credit);
         double zx = benchmark.Discount(dates.TradedOn, dates.DeliverySettles, Side.Credit);
+        double strikesFallBy = ExpectedDividends.StrikesFallBy(expected, dates.TradedOn, dates.Expiry);
         double dividends = expected.Sum(d => d.Amount * benchmark.Discount(dates.TradedOn, d.CashOn, Side.Credit));
         double fee = known.Borrow(chain.Underlying.Symbol)?.Fee ?? 0;
         double borrow = chain.UnderlyingMid * fee * (dates.DeliverySettles.DayNumber - dates.StockSettles.DayNumber) / 360;
@@ -93,7 +94,7 @@ internal static class StockAgreement
                 continue;
             }
 
-            double synthetic = ((call.Mid - callPremium(strike) - put.Mid + putPremium(strike)) * zo) + (strike * zx);
+            double synthetic = ((call.Mid - callPremium(strike) - put.Mid + putPremium(strike)) * zo) + ((strike - strikesFallBy) * zx);
             offsets.Add(((synthetic + dividends + borrow) / zs) - chain.UnderlyingMid);
         }
     }

@@ -21,6 +21,7 @@ internal sealed class SyntheticValue
     private readonly double _dividends;
     private readonly int _days;
     private readonly double _longShare;
+    private readonly double _strikesFallBy;
 
     public SyntheticValue(ExpiryView view, ParityRules rules, Side side)
     {
@@ -32,15 +33,15 @@ internal sealed class SyntheticValue
         _dividends = view.DividendsWorth(side);
         _days = view.Dates.FundedDays;
         _longShare = rules.Entry.LongExerciseValue;
+        _strikesFallBy = view.StrikesFallBy;
     }
 
     /// <summary>Whether a conversion or reversal at a row could clear the thresholds.</summary>
     public bool SingleInReach(Kind kind, Chain chain, int row)
     {
-        double strike = chain.Columns.Strike[row] / 1000.0;
         double edge = Single(kind, chain, row);
         edge += _longShare > 0 ? _longShare * Premia.Bounds(_view.Premium, row, kind == Kind.Conversion ? Right.Put : Right.Call).Most : 0;
-        return edge >= Thresholds.Least(_rules.Entry, strike * _zx, _days);
+        return edge >= Thresholds.Least(_rules.Entry, StrikeAtExpiry(chain, row) * _zx, _days);
     }
 
     /// <summary>Adds the pairs of rows whose box could clear the thresholds. Where the largest a less the smallest b does not, no pair does.</summary>
@@ -60,8 +61,9 @@ internal sealed class SyntheticValue
         }
 
         double mid = chain.UnderlyingMid;
-        double room = _longShare > 0 ? 2 * _longShare * chain.Columns.Strike[slice.Start + slice.Count - 1] / 1000.0 * (1 - Math.Min(1, _zx)) + (_longShare * _dividends) : 0;
-        double least = Thresholds.Least(_rules.Entry, _rules.Packages.BoxWidth.Least * mid * _zx, _days);
+        double room = MostOfLongLegs(slice);
+        double least = Math.Min(
+            Thresholds.Least(_rules.Entry, _rules.Packages.BoxWidth.Least * mid * _zx, _days), Thresholds.Least(_rules.Entry, _rules.Packages.BoxWidth.Most * mid * _zx, _days));
         if (!(bestLow + bestHigh + room >= least))
         {
             return;
@@ -97,11 +99,27 @@ internal sealed class SyntheticValue
 
     /// <summary>a: what a synthetic sold at a row brings.</summary>
     public double Sold(Chain chain, int row) =>
-        ((Price(chain.Option(row, Right.Call), buys: false) - Price(chain.Option(row, Right.Put), buys: true)) * _zo) + (chain.Columns.Strike[row] / 1000.0 * _zx);
+        ((Price(chain.Option(row, Right.Call), buys: false) - Price(chain.Option(row, Right.Put), buys: true)) * _zo) + (StrikeAtExpiry(chain, row) * _zx);
 
     /// <summary>b: what a synthetic bought at a row costs.</summary>
     public double Bought(Chain chain, int row) =>
-        ((Price(chain.Option(row, Right.Call), buys: true) - Price(chain.Option(row, Right.Put), buys: false)) * _zo) + (chain.Columns.Strike[row] / 1000.0 * _zx);
+        ((Price(chain.Option(row, Right.Call), buys: true) - Price(chain.Option(row, Right.Put), buys: false)) * _zo) + (StrikeAtExpiry(chain, row) * _zx);
+
+    private double StrikeAtExpiry(Chain chain, int row) => (chain.Columns.Strike[row] / 1000.0) - _strikesFallBy;
+
+    // What the rights of a box's long call and long put are counted at, at most, whichever strikes they have.
+    private double MostOfLongLegs(ExpirySlice slice)
+    {
+        double call = 0;
+        double put = 0;
+        for (int row = slice.Start; _longShare > 0 && row < slice.Start + slice.Count; row++)
+        {
+            call = Math.Max(call, Premia.Bounds(_view.Premium, row, Right.Call).Most);
+            put = Math.Max(put, Premia.Bounds(_view.Premium, row, Right.Put).Most);
+        }
+
+        return _longShare * (call + put);
+    }
 
     private double Price(Touch touch, bool buys) => Prices.Of(touch, buys, _rules.Execution.HalfSpreadPaid, _rules.Costs);
 }
