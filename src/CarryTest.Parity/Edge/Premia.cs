@@ -161,7 +161,7 @@ public sealed class Premia
     // Worth without the right, at most: the ask of the out-of-the-money option of the pair, brought over by parity where it is the other one. NaN unless that option is quoted on both sides.
     private static double EuropeanAtMost(PremiumSetting setting, int row, Right right, double strike)
     {
-        Right outOfTheMoney = strike >= setting.Forward ? Right.Call : Right.Put;
+        Right outOfTheMoney = OutOfTheMoney(setting, row);
         Touch touch = setting.Chain.Option(row, outOfTheMoney);
         if (!touch.Quoted || right == outOfTheMoney)
         {
@@ -189,42 +189,60 @@ public sealed class Premia
         })).Value;
     }
 
-    private static double VolatilityAt(PremiumSetting setting, int row)
+    private double VolatilityAt(PremiumSetting setting, int row)
     {
-        double own = Implied(setting, row);
+        double own = Implied(setting, row, OutOfTheMoneyMid(setting, row));
         if (!double.IsNaN(own))
         {
-            return own;
+            return LessPremium(setting, row, own);
         }
 
         // No out-of-the-money quote of its own: the median of the three nearest strikes that have one; else 0, which gives the largest premium in the money.
         ExpirySlice slice = setting.Chain.Slice(setting.Label)!.Value;
-        var near = new List<(int Distance, double Volatility)>();
+        var near = new List<(int Distance, int Row, double Volatility)>();
         for (int i = slice.Start; i < slice.Start + slice.Count; i++)
         {
-            double other = Implied(setting, i);
+            double other = Implied(setting, i, OutOfTheMoneyMid(setting, i));
             if (!double.IsNaN(other))
             {
-                near.Add((Math.Abs(setting.Chain.Columns.Strike[i] - setting.Chain.Columns.Strike[row]), other));
+                near.Add((Math.Abs(setting.Chain.Columns.Strike[i] - setting.Chain.Columns.Strike[row]), i, other));
             }
         }
 
-        double[] three = [.. near.OrderBy(n => n.Distance).Take(3).Select(n => n.Volatility).Order()];
+        double[] three = [.. near.OrderBy(n => n.Distance).Take(3).Select(n => LessPremium(setting, n.Row, n.Volatility)).Order()];
         return three.Length == 0 ? 0 : three[three.Length / 2];
     }
 
-    private static double Implied(PremiumSetting setting, int row)
+    // An American quote holds a premium of its own: the volatility of the quote without it, at the premium of the first answer. A second round moves it by less than the step.
+    private double LessPremium(PremiumSetting setting, int row, double volatility)
     {
-        Chain chain = setting.Chain;
-        double strike = chain.Columns.Strike[row] / 1000.0;
-        Right right = strike >= setting.Forward ? Right.Call : Right.Put;
-        Touch touch = chain.Option(row, right);
-        if (!touch.Quoted || !(setting.Years > 0) || !(setting.Forward > 0))
+        Right right = OutOfTheMoney(setting, row);
+        if (right == Right.Call && setting.Dividends.Length == 0 && setting.Rate >= 0)
+        {
+            return volatility;
+        }
+
+        AmericanSolution solution = Solve(setting, setting.Chain.Columns.Strike[row], right, volatility);
+        double premium = solution.Premium(Math.Clamp(setting.Spot, solution.SpotLow, solution.SpotHigh));
+        double without = Implied(setting, row, OutOfTheMoneyMid(setting, row) - Math.Max(premium, 0));
+        return double.IsNaN(without) ? volatility : without;
+    }
+
+    private static Right OutOfTheMoney(PremiumSetting setting, int row) => setting.Chain.Columns.Strike[row] / 1000.0 >= setting.Forward ? Right.Call : Right.Put;
+
+    private static double OutOfTheMoneyMid(PremiumSetting setting, int row) => setting.Chain.Option(row, OutOfTheMoney(setting, row)).Mid;
+
+    // Rounded to a tenth of a point, so that solutions can be shared; NaN where the price has none.
+    private static double Implied(PremiumSetting setting, int row, double price)
+    {
+        if (double.IsNaN(price) || !(setting.Years > 0) || !(setting.Forward > 0))
         {
             return double.NaN;
         }
 
-        double volatility = ImpliedVolatility.European(Of(right), touch.Mid, setting.Forward, strike, setting.Discount, setting.Years).Volatility;
+        double strike = setting.Chain.Columns.Strike[row] / 1000.0;
+        OptionRight right = Of(OutOfTheMoney(setting, row));
+        double volatility = ImpliedVolatility.European(right, price, setting.Forward, strike, setting.Discount, setting.Years).Volatility;
         return double.IsNaN(volatility) ? double.NaN : Math.Round(volatility / VolatilityStep) * VolatilityStep;
     }
 
