@@ -1,5 +1,4 @@
 using System.Collections.Immutable;
-using System.Globalization;
 using CarryTest.History.Writing;
 using CarryTest.Invention.Planted;
 using CarryTest.Invention.Prices;
@@ -13,7 +12,7 @@ namespace CarryTest.Invention;
 /// <summary>Writes an invented exchange: the demonstration year, or a market of the same kind of any size. The same seed gives the same bytes.</summary>
 public static class InventedMarket
 {
-    private const int RowsOfNameAndDay = 180;
+    private const int RowsOfNameAndDay = 218;
 
     /// <summary>Writes a history aside and gives it its name when it is complete.</summary>
     /// <param name="folder">must not exist, or be empty</param>
@@ -77,14 +76,14 @@ public static class InventedMarket
         var parallel = new ParallelOptions { MaxDegreeOfParallelism = Math.Max(1, settings.Threads), CancellationToken = stop };
         Parallel.For(0, scripts.Length, parallel, i =>
         {
-            names[i] = new NameWriter(settings.Seed, scripts[i], curve, days);
+            names[i] = new NameWriter(settings, scripts[i], curve, days);
             names[i].Write(folder, stop);
             progress?.Report((double)Interlocked.Increment(ref done) / scripts.Length);
         });
 
         ReferenceWriter.Write(folder, Tables(scripts, names, curve, last));
-        WritePlanted(folder, scripts, names, days);
-        return new InventionResult(names.Sum(n => n.Rows), scripts.Length, days.Length, names.Sum(n => n.Plants.Count));
+        int planted = PlantedTable.Write(folder, names.SelectMany(n => n.Plants), scripts, days);
+        return new InventionResult(names.Sum(n => n.Rows), scripts.Length, days.Length, planted);
     }
 
     // Fewer rows than the year: fewer names and days of it. More: further names of the same kind.
@@ -136,75 +135,4 @@ public static class InventedMarket
         Settlements = [.. names.SelectMany(n => n.Settlements)],
         Closes = [.. names.SelectMany(n => n.Closes)],
     };
-
-    private static void WritePlanted(string folder, ImmutableArray<NameScript> scripts, NameWriter[] names, DateOnly[] days)
-    {
-        Plant[] plants = [.. names.SelectMany(n => n.Plants).OrderBy(p => p.First).ThenBy(p => p.Root, StringComparer.Ordinal).ThenBy(p => p.Expiry).ThenBy(p => p.Low)];
-        var rows = new List<string[]>();
-        foreach (Plant plant in plants)
-        {
-            int lastSnapshot = Math.Min(plant.First + plant.Length - 1, (days.Length * Sessions.Snapshots) - 1);
-            string moved = plant.What == PlantWhat.StaleStock ? "stock" : $"{(plant.Moved.Call ? "call" : "put")} {Text(plant.Moved.Strike / 1000.0)}";
-            rows.Add(
-            [
-                Text(rows.Count + 1), plant.Root, Text(plant.Expiry), plant.Low == 0 ? "" : Text(plant.Low / 1000.0), plant.Low == plant.High ? "" : Text(plant.High / 1000.0), KindOf(plant),
-                At(days, plant.First), At(days, lastSnapshot), moved, WhatOf(plant.What), Text(plant.EdgeAtFirst), Text(plant.EdgeAtNext),
-            ]);
-        }
-
-        foreach (NameScript script in scripts)
-        {
-            AddKnown(rows, script, days);
-        }
-
-        ReferenceWriter.Table(
-            Path.Combine(folder, "reference"), "planted", "id,root,expiry,strike_low,strike_high,kind,first_at,last_at,moved,what,edge_delay_0,edge_delay_1", rows, r => r);
-    }
-
-    // Windows in which the chain knows more than the tables: a cut before its declaration, a fee before it rises.
-    private static void AddKnown(List<string[]> rows, NameScript script, DateOnly[] days)
-    {
-        double last = double.NaN;
-        foreach (ScriptedDividend dividend in script.Dividends)
-        {
-            if (dividend.Amount < last && dividend.ChainKnowsFrom < dividend.DeclaredOn && dividend.ChainKnowsFrom >= days[0] && dividend.DeclaredOn <= days[^1])
-            {
-                rows.Add([Text(rows.Count + 1), script.Symbol, "", "", "", "conversion", Instant(Sessions.At(dividend.ChainKnowsFrom, 0)), Instant(Sessions.At(dividend.DeclaredOn, 2)), "", WhatOf(PlantWhat.ComingCut), "", ""]);
-            }
-
-            last = dividend.Amount;
-        }
-
-        for (int i = 1; i < script.Borrow.Length; i++)
-        {
-            if (script.Borrow[i].Fee > script.Borrow[i - 1].Fee && script.Borrow[i].From <= days[^1] && script.Borrow[i - 1].From <= script.Borrow[i].From)
-            {
-                DateOnly from = script.Borrow[i - 1].From > days[0] ? script.Borrow[i - 1].From : days[0];
-                rows.Add([Text(rows.Count + 1), script.Symbol, "", "", "", "reversal", Instant(Sessions.At(from, 0)), Instant(Sessions.At(script.Borrow[i].From, 2)), "", WhatOf(PlantWhat.FeeRise), "", ""]);
-            }
-        }
-    }
-
-    private static string KindOf(Plant plant) => plant.What == PlantWhat.StaleStock
-        ? ""
-        : plant.Kind switch { PlantKind.Conversion => "conversion", PlantKind.Reversal => "reversal", PlantKind.LongBox => "long-box", _ => "short-box" };
-
-    private static string WhatOf(PlantWhat what) => what switch
-    {
-        PlantWhat.Edge => "edge",
-        PlantWhat.StaleStock => "stale-stock",
-        PlantWhat.ComingCut => "coming-cut",
-        PlantWhat.FeeRise => "fee-rise",
-        _ => "gone-next",
-    };
-
-    private static string At(DateOnly[] days, int snapshot) => Instant(Sessions.At(days[snapshot / Sessions.Snapshots], snapshot % Sessions.Snapshots));
-
-    private static string Instant(DateTime at) => at.ToString("yyyy-MM-dd'T'HH:mm:ss'Z'", CultureInfo.InvariantCulture);
-
-    private static string Text(int number) => number.ToString(CultureInfo.InvariantCulture);
-
-    private static string Text(DateOnly date) => date.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture);
-
-    private static string Text(double number) => double.IsNaN(number) ? "" : Math.Round(number, 4).ToString("0.####", CultureInfo.InvariantCulture);
 }

@@ -22,7 +22,7 @@ internal static class Notices
                 deal.Book();
                 package.Mark(Ending.Assigned);
                 book.Event(today, package, EventKind.Assignment, notice.Contracts, 0,
-                    $"{package.Terms.Kind.Legs[notice.Leg].Of} {package.Terms.StrikeOf(package.Terms.Kind.Legs[notice.Leg])} assigned, traded {notice.TradedOn:yyyy-MM-dd}");
+                    $"{package.Terms.NameOf(notice.Leg)} assigned, traded {notice.TradedOn:yyyy-MM-dd}");
             }
         }
     }

@@ -113,7 +113,7 @@ internal static class OwnExercises
         package.Mark(Ending.Exercised);
         deal.Book();
         book.Event(today, package, EventKind.Exercise, contracts, 0,
-            $"own {package.Terms.Kind.Legs[leg].Of} {package.Terms.StrikeOf(package.Terms.Kind.Legs[leg])} exercised, the short option of the strike bought in");
+            $"own {package.Terms.NameOf(leg)} exercised, the short option of the strike bought in");
     }
 
     private static double AskOf(Chain chain, int row, Leg leg) => chain.Option(row, leg.Of == LegOf.Call ? Right.Call : Right.Put).Ask;

@@ -8,8 +8,8 @@ internal sealed class Listing
 {
     private const int FurthestDays = 200;
     private const int NearMonths = 3;
-    private const double AroundListing = 0.15;
-    private const double AroundPrice = 0.10;
+    private const double AroundListing = 0.20;
+    private const double AroundPrice = 0.12;
     private readonly Dictionary<(DateOnly Day, DateOnly Expiry), (int Low, int High)> _strikes = [];
     private readonly Dictionary<DateOnly, DateOnly[]> _expiries = [];
 

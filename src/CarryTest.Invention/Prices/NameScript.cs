@@ -20,7 +20,8 @@ internal sealed record ScriptedDividend(DateOnly DeclaredOn, DateOnly ExOn, Date
 /// <param name="From">first day</param>
 /// <param name="Fee">a fraction a year</param>
 /// <param name="Available">shares; null = no limit</param>
-internal readonly record struct ScriptedBorrow(DateOnly From, double Fee, long? Available);
+/// <param name="ChainKnowsFrom">from this day on the chain expects it; null: from the day on which the tables make it known</param>
+internal readonly record struct ScriptedBorrow(DateOnly From, double Fee, long? Available, DateOnly? ChainKnowsFrom = null);
 
 /// <summary>Everything that is invented about one underlying before its random path.</summary>
 internal sealed record NameScript
@@ -54,4 +55,7 @@ internal sealed record NameScript
 
     /// <summary>Roots: one on shares, or a morning and an evening one.</summary>
     public ImmutableArray<OptionRoot> Roots { get; init; } = [];
+
+    /// <summary>A trading day on which the name has no rows where the settings ask for one.</summary>
+    public DateOnly? MissingOn { get; init; }
 }

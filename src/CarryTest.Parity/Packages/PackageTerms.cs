@@ -15,6 +15,14 @@ public sealed record PackageTerms(PackageKind Kind, OptionRoot Root, Underlying 
     /// <summary>The strike of a leg; for stock the only strike.</summary>
     public Strike StrikeOf(Leg leg) => leg.StrikeSlot == 0 ? Low : High;
 
+    /// <summary>A leg in words: call 70, put 65, stock.</summary>
+    public string NameOf(int leg) => Kind.Legs[leg].Of switch
+    {
+        LegOf.Call => $"call {StrikeOf(Kind.Legs[leg])}",
+        LegOf.Put => $"put {StrikeOf(Kind.Legs[leg])}",
+        _ => "stock",
+    };
+
     /// <summary>What delivery pays per share, signed: + received.</summary>
     public double PaysAtExpiry => Kind.PaysAtExpiry(Low.PerShare, High.PerShare);
 
