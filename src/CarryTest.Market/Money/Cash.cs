@@ -6,8 +6,10 @@ namespace CarryTest.Market.Money;
 /// <param name="Cents">whole cents</param>
 public readonly record struct Cash(long Cents) : IComparable<Cash>
 {
-    // A product such as 0.0125 x 10 is a tie in decimal and may miss it by an ulp in binary: ties are looked for within a millionth of a cent.
-    private const int DigitsOfACent = 6;
+    // A product such as 0.0125 x 10 is a tie in decimal and may miss it in binary, by more the larger it is: whole and half cents are looked for within this of
+    // the amount, a millionth of a cent or some units of its last binary place.
+    private const double NearInCents = 5e-7;
+    private const double NearRelative = 1e-15;
 
     /// <summary>No money.</summary>
     public static Cash Zero => default;
@@ -51,7 +53,9 @@ public readonly record struct Cash(long Cents) : IComparable<Cash>
             throw new ArgumentOutOfRangeException(nameof(currency), currency, "not an amount of money");
         }
 
-        return Math.Round(currency * 100.0, DigitsOfACent);
+        double cents = currency * 100.0;
+        double half = Math.Round(cents * 2) / 2;
+        return Math.Abs(cents - half) <= Math.Max(NearInCents, Math.Abs(cents) * NearRelative) ? half : cents;
     }
 
     /// <summary>Adds.</summary>

@@ -23,6 +23,9 @@ internal sealed class EmbeddedFonts : IFontResolver
     /// <inheritdoc/>
     public SKTypeface? CreateTypeface(string fontName, bool bold, bool italic) => fontName == Family ? (bold ? Strong : Regular) : null;
 
+    /// <summary>A font for text that the drawing library does not write itself.</summary>
+    public static SKFont Of(bool strong, float size) => new(strong ? Strong : Regular, size);
+
     /// <summary>A file of the folder Fonts.</summary>
     public static byte[] Bytes(string file)
     {

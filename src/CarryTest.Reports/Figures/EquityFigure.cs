@@ -31,7 +31,7 @@ internal static class EquityFigure
                         Line("mid", Tone.First, Stroke.Solid, e => e.EquityMid.ToDouble()),
                     ],
                     260),
-                new Panel(dates, new Axis(AxisKind.Numbers, "below the highest mid before, currency"), [new Band("drawdown at mid", Tone.Loss, days, Falls(equity, summary))], 90),
+                new Panel(dates, new Axis(AxisKind.Numbers, "drawdown, currency"), [new Band("drawdown: mid below its highest close before", Tone.Loss, days, Falls(equity, summary))], 90),
             ],
             Full: true);
     }

@@ -9,8 +9,8 @@ namespace CarryTest.Reports.Figures;
 internal static class PlotDrawer
 {
     private const int Width = 1040;
-    private const int Around = 78;
-    private const int TitleHeight = 34;
+    private const int TitleHeight = 38;
+    private const int Below = 54;
     private const float Scaling = 2;
     private static readonly Palette Colours = Palette.Light;
 
@@ -18,34 +18,45 @@ internal static class PlotDrawer
     public static byte[] Png(Figure figure)
     {
         ImmutableArray<Plot> plots = Plots(figure);
-        int[] heights = [.. figure.Panels.Select((p, i) => (int)p.Height + Around + (i == 0 ? TitleHeight : 0))];
-        using SKSurface surface = SKSurface.Create(new SKImageInfo((int)(Width * Scaling), (int)(heights.Sum() * Scaling)));
-        float top = 0;
+        int[] heights = [.. figure.Panels.Select(p => (int)p.Height + Above(p) + Below)];
+        using SKSurface surface = SKSurface.Create(new SKImageInfo((int)(Width * Scaling), (int)((TitleHeight + heights.Sum()) * Scaling)));
+        surface.Canvas.Clear(SKColor.Parse(Colours.Paper));
+        Write(surface.Canvas, figure.Title, 16, 26, 16, strong: true);
+        float top = TitleHeight;
         for (int i = 0; i < plots.Length; i++)
         {
-            float bottom = top + (heights[i] * Scaling);
-            plots[i].Render(surface.Canvas, new PixelRect(0, Width * Scaling, bottom, top));
-            top = bottom;
+            using SKSurface part = SKSurface.Create(new SKImageInfo((int)(Width * Scaling), (int)(heights[i] * Scaling)));
+            plots[i].Render(part.Canvas, new PixelRect(0, Width * Scaling, heights[i] * Scaling, 0));
+            surface.Canvas.DrawSurface(part, 0, top * Scaling);
+            Write(surface.Canvas, figure.Panels[i].Y.Title, 16, top + 16, 13, strong: false);
+            top += heights[i];
+            plots[i].Dispose();
         }
 
         using SKImage image = surface.Snapshot();
         using SKData png = image.Encode(SKEncodedImageFormat.Png, 100);
-        foreach (Plot plot in plots)
-        {
-            plot.Dispose();
-        }
-
         return png.ToArray();
+    }
+
+    private static int Above(Panel panel) => (panel.Y.Title.Length > 0 ? 22 : 6) + (HasLegend(panel) ? 34 : 4);
+
+    private static bool HasLegend(Panel panel) => panel.Marks.Any(m => m.Label.Length > 0 && m is not Bars);
+
+    private static void Write(SKCanvas canvas, string text, float x, float y, float size, bool strong)
+    {
+        using SKFont font = EmbeddedFonts.Of(strong, size * Scaling);
+        using var paint = new SKPaint { Color = SKColor.Parse(Colours.Ink), IsAntialias = true };
+        canvas.DrawText(text, x * Scaling, y * Scaling, SKTextAlign.Left, font, paint);
     }
 
     /// <summary>The plots, one a panel; they hold the numbers that are drawn.</summary>
     public static ImmutableArray<Plot> Plots(Figure figure)
     {
         EmbeddedFonts.Use();
-        return [.. figure.Panels.Select((panel, i) => PlotOf(figure, panel, i == 0))];
+        return [.. figure.Panels.Select(PlotOf)];
     }
 
-    private static Plot PlotOf(Figure figure, Panel panel, bool first)
+    private static Plot PlotOf(Panel panel)
     {
         var plot = new Plot { ScaleFactor = Scaling };
         Scale x = Scale.OfX(panel);
@@ -60,17 +71,12 @@ internal static class PlotDrawer
         plot.Axes.Bottom.TickGenerator = Ticks(x.Ticks(panel.X, panel.X.Kind == AxisKind.Dates ? 13 : 9), at => panel.X.Kind == AxisKind.Logarithm ? Math.Log10(at) : at);
         plot.Axes.Left.TickGenerator = Ticks(y.Ticks(panel.Y, (int)Math.Clamp(panel.Height / 40, 2, 8)), at => labels ? Flip(panel, at) : at);
         plot.Axes.Bottom.Label.Text = panel.X.Title;
-        plot.Axes.Left.Label.Text = panel.Y.Title;
-        plot.Axes.Left.MinimumSize = labels ? 190 : 96;
+        plot.Layout.Fixed(new PixelPadding(labels ? 190 : 96, 30, Below, Above(panel)));
         Style(plot, labels);
-        if (first)
+        if (HasLegend(panel))
         {
-            plot.Title(figure.Title);
-        }
-
-        if (panel.Marks.Any(m => m.Label.Length > 0 && m is not Bars))
-        {
-            plot.ShowLegend(Alignment.UpperLeft);
+            plot.Legend.Orientation = Orientation.Horizontal;
+            plot.ShowLegend(Edge.Top);
         }
         else
         {
@@ -92,7 +98,8 @@ internal static class PlotDrawer
                 scatter.LegendText = line.Label;
                 break;
             case Band band when band.X.Length > 0:
-                ScottPlot.Plottables.FillY fill = plot.Add.FillY(band.X.ToArray(), new double[band.X.Length], band.Y.ToArray());
+                (double[] stepX, double[] stepY) = Steps(band.X, band.Y);
+                ScottPlot.Plottables.FillY fill = plot.Add.FillY(stepX, new double[stepX.Length], stepY);
                 fill.FillColor = Of(band.Tone).WithAlpha(0.45);
                 fill.LineWidth = 0;
                 fill.LegendText = band.Label;
@@ -133,15 +140,31 @@ internal static class PlotDrawer
         for (int i = 0; i < drawn.Length; i++)
         {
             double end = Math.Max(drawn[i].ValueBase, drawn[i].Value);
-            double start = Math.Min(drawn[i].ValueBase, drawn[i].Value);
             bool right = end < x.Low + (0.8 * (x.High - x.Low));
-            ScottPlot.Plottables.Text text = plot.Add.Text(bars.Items[i].Text, right ? end : start, drawn[i].Position);
+            ScottPlot.Plottables.Text text = plot.Add.Text(bars.Items[i].Text, end, drawn[i].Position);
             text.LabelAlignment = right ? Alignment.MiddleLeft : Alignment.MiddleRight;
             text.OffsetX = right ? 5 : -5;
-            text.LabelFontColor = Of(Tone.Ink);
+            text.LabelFontColor = right ? Of(Tone.Ink) : Color.FromHex(Colours.Paper);
             text.LabelFontSize = 12;
             text.LabelFontName = EmbeddedFonts.Family;
         }
+    }
+
+    // A value holds until the next point: a corner before every point but the first.
+    private static (double[] X, double[] Y) Steps(ImmutableArray<double> x, ImmutableArray<double> y)
+    {
+        var stepX = new double[(2 * x.Length) - 1];
+        var stepY = new double[stepX.Length];
+        for (int i = 0; i < x.Length; i++)
+        {
+            (stepX[2 * i], stepY[2 * i]) = (x[i], y[i]);
+            if (i > 0)
+            {
+                (stepX[(2 * i) - 1], stepY[(2 * i) - 1]) = (x[i], y[i - 1]);
+            }
+        }
+
+        return (stepX, stepY);
     }
 
     private static double Flip(Panel panel, double at) => panel.Y.Labels.Length - 1 - at;
@@ -158,13 +181,10 @@ internal static class PlotDrawer
         plot.Grid.YAxisStyle.IsVisible = !labels;
         plot.Axes.Right.IsVisible = false;
         plot.Axes.Top.IsVisible = false;
-        plot.Axes.Left.Label.Bold = false;
         plot.Axes.Bottom.Label.Bold = false;
-        plot.Axes.Left.Label.FontSize = 13;
         plot.Axes.Bottom.Label.FontSize = 13;
-        plot.Axes.Title.Label.FontSize = 16;
         plot.Legend.BackgroundColor = Color.FromHex(Colours.Paper);
-        plot.Legend.OutlineColor = Color.FromHex(Colours.Line);
+        plot.Legend.OutlineWidth = 0;
         plot.Legend.ShadowColor = Colors.Transparent;
         plot.Legend.FontColor = Color.FromHex(Colours.Ink);
         plot.Font.Set(EmbeddedFonts.Family);

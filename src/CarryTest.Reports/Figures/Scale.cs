@@ -89,7 +89,7 @@ internal sealed record Scale(double Low, double High, AxisKind Kind)
         var ticks = ImmutableArray.CreateBuilder<Tick>();
         for (double i = Math.Ceiling((Low / step) - 1e-9); i * step <= High + (1e-9 * step); i++)
         {
-            double at = i * step;
+            double at = (i * step) + 0.0;
             ticks.Add(new Tick(at, Text(at, step, format)));
         }
 

@@ -8,7 +8,6 @@ namespace CarryTest.Reports.Figures;
 /// <summary>Draws a figure as SVG for the page: colours come from the page's style, text is text, nothing has an identity of its own but the description.</summary>
 internal sealed class SvgDrawer
 {
-    private const double CharacterWidth = 6.6;
     private const double LineHeight = 17;
     private const double Top = 8;
     private const double Right = 10;
@@ -46,19 +45,23 @@ internal sealed class SvgDrawer
 
     private double LeftOf(Panel panel)
     {
-        double longest = Scale.OfY(panel).Ticks(panel.Y, MostTicksOfY(panel)).Select(t => t.Text.Length).DefaultIfEmpty(0).Max() * CharacterWidth;
-        return Math.Min(longest + 12, _width * 0.42);
+        double longest = Scale.OfY(panel).Ticks(panel.Y, MostTicksOfY(panel)).Select(t => WidthOf(t.Text)).DefaultIfEmpty(0).Max();
+        return Math.Min(longest + 10, _width * 0.42);
     }
 
     private double Draw(Panel panel, double left, double top)
     {
         Scale x = Scale.OfX(panel);
         Scale y = Scale.OfY(panel);
-        top += LineHeight;
+        top += panel.Y.Title.Length > 0 ? LineHeight : 0;
         double height = panel.Height;
         double width = _width - left - Right;
         var frame = new Frame(left, top, width, height, x, y);
-        Text(panel.Y.Kind == AxisKind.Labels ? 0 : left, top - 8, panel.Y.Title, "axis", "start");
+        if (panel.Y.Title.Length > 0)
+        {
+            Text(panel.Y.Kind == AxisKind.Labels ? 0 : left, top - 8, panel.Y.Title, "axis", "start");
+        }
+
         string plot = string.Create(CultureInfo.InvariantCulture, $"{N(left)} {N(top)} {N(width)} {N(height)}");
         string range = string.Create(CultureInfo.InvariantCulture, $"{x.Low:R} {x.High:R} {y.Low:R} {y.High:R}");
         _svg.Append(CultureInfo.InvariantCulture, $"<g class=\"panel\" data-plot=\"{plot}\" data-range=\"{range}\">");
@@ -76,7 +79,7 @@ internal sealed class SvgDrawer
 
     private void Grid(Panel panel, Frame f)
     {
-        int mostX = (int)Math.Clamp(f.Width / (panel.X.Kind == AxisKind.Dates ? 72 : 84), 2, 12);
+        int mostX = (int)Math.Clamp(f.Width / (panel.X.Kind == AxisKind.Dates ? 62 : 84), 2, 12);
         foreach (Tick tick in f.X.Ticks(panel.X, mostX))
         {
             double at = f.AtX(tick.At);
@@ -162,12 +165,14 @@ internal sealed class SvgDrawer
         double start = Math.Min(from, to);
         double length = Math.Max(Math.Abs(to - from), bar.From == bar.To ? 0 : 1);
         _svg.Append(CultureInfo.InvariantCulture, $"<rect class=\"bar {Class(bar.Tone)}\" x=\"{N(start)}\" y=\"{N(y - (thick / 2))}\" width=\"{N(length)}\" height=\"{N(thick)}\"/>");
-        double textWidth = bar.Text.Length * CharacterWidth;
+        double textWidth = WidthOf(bar.Text);
         double end = start + length;
-        bool right = end + 5 + textWidth <= f.Left + f.Width;
-        bool leftFits = start - 5 - textWidth >= f.Left;
-        double at = right ? end + 5 : leftFits ? start - 5 : f.Left + f.Width - 3;
-        Text(at, y + 4, bar.Text, right || leftFits ? "value" : "value over", right ? "start" : "end");
+        double edge = f.Left + f.Width;
+        bool right = end + 5 + textWidth <= edge;
+        bool inside = !right && length > textWidth + 10;
+        bool before = !right && !inside && start - 5 - textWidth >= f.Left;
+        double at = right ? end + 5 : inside ? end - 5 : before ? start - 5 : edge;
+        Text(at, y + 4, bar.Text, inside ? "value over" : "value", right ? "start" : "end");
     }
 
     private static string Steps(ImmutableArray<double> x, ImmutableArray<double> y, Frame f)
@@ -208,7 +213,7 @@ internal sealed class SvgDrawer
         double y = Top + 6;
         foreach (Mark mark in named)
         {
-            double width = 32 + (mark.Label.Length * CharacterWidth) + 14;
+            double width = 32 + WidthOf(mark.Label) + 14;
             if (x > 0 && x + width > _width)
             {
                 x = 0;
@@ -250,8 +255,38 @@ internal sealed class SvgDrawer
 
     private static string Cut(string text, double room)
     {
-        int fits = Math.Max(4, (int)(room / CharacterWidth));
-        return text.Length <= fits ? text : string.Concat(text.AsSpan(0, fits - 1), "…");
+        if (WidthOf(text) <= room)
+        {
+            return text;
+        }
+
+        int fits = text.Length;
+        while (fits > 1 && WidthOf(text.AsSpan(0, fits)) + WidthOf("…") > room)
+        {
+            fits--;
+        }
+
+        return string.Concat(text.AsSpan(0, fits), "…");
+    }
+
+    // Of the page's font at 12 pixels, rounded up; other scripts are taken for wide.
+    private static double WidthOf(ReadOnlySpan<char> text)
+    {
+        double width = 0;
+        foreach (char c in text)
+        {
+            width += c switch
+            {
+                'i' or 'j' or 'l' or '.' or ',' or ':' or ';' or ' ' or '\'' or '|' => 3.6,
+                'f' or 't' or 'r' or '(' or ')' or '-' => 5,
+                'm' or 'w' or 'M' or 'W' => 10.6,
+                >= 'A' and <= 'Z' => 8.6,
+                <= 'z' or '\u2212' => 7.3,
+                _ => 12,
+            };
+        }
+
+        return width;
     }
 
     private static string Class(Tone tone) => "tone-" + tone.ToString().ToLowerInvariant();

@@ -17,7 +17,8 @@ internal static class ClosingSections
                 ["key", "value", "written"],
                 facts.RuleBook.Effective.Select(e => Html.Of(
                     $"<tr{(e.Written ? Html.Raw(" class=\"written\"") : Html.None)}><td><code>{e.Key}</code></td><td><code>{facts.Relative(e.Value)}</code></td><td>{(e.Written ? "written" : "default")}</td></tr>")),
-                sorts: true);
+                sorts: true,
+                tall: true);
         Html overrides = facts.RuleBook.Overrides.Length == 0
             ? Html.None
             : Html.Of($"<p>Overridden on the command line: {facts.RuleBook.Overrides.Select(o => Html.Of($"<code>{o}</code> "))}</p>");

@@ -13,7 +13,10 @@ internal static class FigureHtml
     private const double NarrowWidth = 330;
     private static readonly JsonSerializerOptions Plain = new() { Encoder = JavaScriptEncoder.UnsafeRelaxedJsonEscaping };
 
-    public static Html Of(Figure figure)
+    /// <summary>The figure.</summary>
+    /// <param name="figure">its description</param>
+    /// <param name="titled">whether its title is written above it; not where a heading says the same</param>
+    public static Html Of(Figure figure, bool titled)
     {
         Html wide = Html.Raw(SvgDrawer.Draw(figure, figure.Full ? FullWidth : HalfWidth, "wide"));
         Html narrow = Html.Raw(SvgDrawer.Draw(figure, NarrowWidth, "narrow"));
@@ -21,7 +24,7 @@ internal static class FigureHtml
         return Html.Of(
             $"""
             <figure id="figure-{figure.Id}" class="{(figure.Full ? "full" : "half")}"{curves}>
-            <figcaption><h3>{figure.Title}</h3><p>{figure.Description}</p></figcaption>
+            <figcaption>{(titled ? Html.Of($"<h3>{figure.Title}</h3>") : Html.None)}<p>{figure.Description}</p></figcaption>
             {wide}{narrow}
             </figure>
 

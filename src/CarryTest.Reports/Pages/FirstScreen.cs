@@ -1,3 +1,4 @@
+using System.Text.RegularExpressions;
 using CarryTest.Carry.Journal;
 using CarryTest.Market.Money;
 using CarryTest.Market.Words;
@@ -7,7 +8,7 @@ using CarryTest.Reports.Tables;
 namespace CarryTest.Reports.Pages;
 
 /// <summary>What the trader reads first: what was earned, on what capital, against what, by how many packages, and the worst one.</summary>
-internal static class FirstScreen
+internal static partial class FirstScreen
 {
     public static Html Of(RunFacts facts, RunSummary s) => Html.Of(
         $"""
@@ -82,11 +83,11 @@ internal static class FirstScreen
         yield return s.Drawdown.Amount < Cash.Zero
             ? Line("Drawdown", Show.Change(s.Drawdown.Amount), $"the deepest fall of equity at mid, from {Show.Day(s.Drawdown.From)} to {Show.Day(s.Drawdown.To)}")
             : Line("Drawdown", "none", "equity at mid never fell below an earlier close");
-        yield return Line("Costs", Show.Money(s.Fees + s.BorrowFees), $"fees {Show.Money(s.Fees)}, borrowed stock {Show.Money(s.BorrowFees)}; both are inside the profit above");
+        yield return Line("Costs", Show.Money(s.Fees + s.BorrowFees), $"fees {Show.Money(s.Fees)}, borrowed stock {Show.Money(s.BorrowFees)}; paid so far, and inside the results above");
         string endings = string.Join(", ", s.Endings.Where(e => e.Count > 0).Select(e => $"{e.Ending.Word()} {Show.Count(e.Count)}"));
         if (endings.Length > 0)
         {
-            yield return Html.Of($"<div><dt>Endings</dt><dd class=\"text\">{endings}</dd></div>");
+            yield return Line("Endings", "", endings);
         }
     }
 
@@ -99,5 +100,9 @@ internal static class FirstScreen
             $"<div><dt>Worst one</dt><dd class=\"{Show.Sign(realised)}\">{Show.Change(realised)}</dd><dd><a href=\"#package-{p.Package}\">{Show.Terms(p)}</a>, expected {Show.Change(p.ExpectedProfit)}: {why}</dd></div>");
     }
 
-    private static Html Line(string what, string figure, string words) => Html.Of($"<div><dt>{what}</dt><dd class=\"n\">{figure}</dd><dd>{words}</dd></div>");
+    private static Html Line(string what, string figure, string words) => Html.Of($"<div><dt>{what}</dt><dd class=\"n\">{figure}</dd><dd>{Days().Split(words).Select(part => Days().IsMatch(part) ? Html.Of($"<span class=\"day\">{part}</span>") : Html.Of($"{part}"))}</dd></div>");
+
+    // A day is not broken between two lines.
+    [GeneratedRegex(@"(\d{4}-\d{2}-\d{2})", RegexOptions.CultureInvariant)]
+    private static partial Regex Days();
 }

@@ -12,7 +12,7 @@ internal static class LifeHtml
     public static Html Of(PackageLife life, bool open = false)
     {
         PackageRow p = life.Row;
-        string result = p.RealisedProfit is { } realised ? Show.Change(realised) : "open";
+        string result = p.RealisedProfit is { } realised ? Show.Change(realised) : $"{Show.ChangeOrNothing(p.OpenMid)} at mid,";
         return Html.Of(
             $"""
             <details class="life"{(open ? Html.Raw(" open") : Html.None)}><summary>{Show.Terms(p)}, {Show.Plural(p.Units, "unit", "units")}: <span class="{Show.Sign(p.RealisedProfit)}">{result}</span> <span class="quiet">{p.Ending.Word()}</span></summary>

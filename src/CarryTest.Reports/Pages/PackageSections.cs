@@ -42,9 +42,10 @@ internal static class PackageSections
             {note}
             {TableHtml.Of(
                 "Packages",
-                ["#no.", "kind", "name", "expiry", "strike", "#units", "filled", "ended", "ending", "#edge decided", "#edge filled", "#tied up", "#expected", "#realised", "#return"],
+                ["#no.", "kind", "name", "expiry", "strike", "#units", "filled", "ended", "ending", "#expected", "#realised", "#return", "#tied up", "#edge"],
                 shown.Select(p => Row(p, withLife.Contains(p.Package))),
-                sorts: true)}
+                sorts: true,
+                tall: true)}
             """);
     }
 
@@ -84,6 +85,6 @@ internal static class PackageSections
     {
         Html number = hasLife ? Html.Of($"<a href=\"#package-{p.Package}\">{p.Package}</a>") : Html.Of($"{p.Package}");
         return Html.Of(
-            $"<tr><td class=\"n\">{number}</td><td>{p.Kind.Word()}</td><td>{Show.Name(p.Underlying)}</td><td>{p.Expiry:yyyy-MM-dd}</td><td>{Show.Strikes(p)}</td><td class=\"n\">{p.Units}</td><td>{p.FilledAt:yyyy-MM-dd}</td><td>{Show.Day(p.EndedOn)}</td><td>{p.Ending.Word()}</td><td class=\"n\">{Show.PerShare(p.EdgeDecided)}</td><td class=\"n\">{Show.PerShare(p.EdgeFilled)}</td><td class=\"n\">{Show.Money(p.CashTiedUp)}</td><td class=\"n\">{Show.Change(p.ExpectedProfit)}</td><td class=\"{Show.Sign(p.RealisedProfit)}\">{(p.RealisedProfit is { } r ? Show.Change(r) : "open")}</td><td class=\"n\">{Show.PerCent(p.ReturnOnCapital)}</td></tr>\n");
+            $"<tr><td class=\"n\">{number}</td><td>{p.Kind.Word()}</td><td>{Show.Name(p.Underlying)}</td><td>{p.Expiry:yyyy-MM-dd}</td><td>{Show.Strikes(p)}</td><td class=\"n\">{p.Units}</td><td>{p.FilledAt:yyyy-MM-dd}</td><td>{Show.Day(p.EndedOn)}</td><td>{p.Ending.Word()}</td><td class=\"n\">{Show.Change(p.ExpectedProfit)}</td><td class=\"{Show.Sign(p.RealisedProfit)}\">{(p.RealisedProfit is { } r ? Show.Change(r) : "open")}</td><td class=\"n\">{Show.PerCent(p.ReturnOnCapital)}</td><td class=\"n\">{Show.Money(p.CashTiedUp)}</td><td class=\"n\">{Show.PerShare(p.EdgeDecided)}</td></tr>\n");
     }
 }

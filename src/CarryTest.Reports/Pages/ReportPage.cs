@@ -36,11 +36,11 @@ internal static class ReportPage
             <nav aria-label="Sections"><ul>{Sections.Select(s => Html.Of($"<li><a href=\"#{s.Id}\">{s.Title}</a></li>"))}</ul></nav>
             <main>
             {FirstScreen.Of(facts, summary)}
-            {Section("equity", ResultSections.Figures(figures, "equity"))}
-            {Section("bridge", Html.Of($"<div class=\"pair\">{ResultSections.Figures(figures, "bridge")}{ResultSections.Bridge(summary)}</div>"))}
-            {Section("funnel", Html.Of($"<div class=\"pair\">{ResultSections.Figures(figures, "funnel")}<div>{ResultSections.Funnel(ledger.Funnel)}</div></div>"))}
+            {Section("equity", ResultSections.Figure(figures, "equity"))}
+            {Section("bridge", Html.Of($"<div class=\"pair\">{ResultSections.Figure(figures, "bridge")}{ResultSections.Bridge(summary)}</div>"))}
+            {Section("funnel", Html.Of($"<div class=\"pair\"><div>{ResultSections.Figure(figures, "funnel")}{ResultSections.PairTests(ledger.Funnel)}</div><div>{ResultSections.CandidateTests(ledger.Funnel)}</div></div>"))}
             {Section("edge", Html.Of($"<div class=\"pair\">{ResultSections.Figures(figures, "edge", "capital")}</div>"))}
-            {Section("results", Html.Of($"<div class=\"pair\">{ResultSections.Figures(figures, "by-kind", "by-month", "by-name")}</div>{ResultSections.Groups(ledger.Packages)}"))}
+            {Section("results", Html.Of($"<div class=\"pair\"><div>{ResultSections.Figures(figures, "by-kind", "by-name")}</div>{ResultSections.Figures(figures, "by-month")}</div>{ResultSections.Groups(ledger.Packages)}"))}
             {Section("events", ResultSections.Events(ledger.Events))}
             {Section("worst", PackageSections.Worst(ledger.Packages))}
             {Section("packages", PackageSections.Table(ledger.Packages, shown))}

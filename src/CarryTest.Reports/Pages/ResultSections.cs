@@ -12,8 +12,11 @@ internal static class ResultSections
 {
     private const int MostEvents = 500;
 
+    /// <summary>The one figure of a section, whose heading is its title.</summary>
+    public static Html Figure(IReadOnlyList<Figure> figures, string id) => Html.Join(figures.Where(f => f.Id == id).Select(f => FigureHtml.Of(f, titled: false)));
+
     /// <summary>Figures by their names, those that there are.</summary>
-    public static Html Figures(IReadOnlyList<Figure> figures, params string[] ids) => Html.Join(ids.SelectMany(id => figures.Where(f => f.Id == id)).Select(FigureHtml.Of));
+    public static Html Figures(IReadOnlyList<Figure> figures, params string[] ids) => Html.Join(ids.SelectMany(id => figures.Where(f => f.Id == id)).Select(f => FigureHtml.Of(f, titled: true)));
 
     /// <summary>The way from expected to realised in numbers.</summary>
     public static Html Bridge(RunSummary s) => TableHtml.Of(
@@ -25,17 +28,11 @@ internal static class ResultSections
             Html.Of($"<tr class=\"sum\"><td>realised</td><td class=\"{Show.Sign(s.Realised)}\">{Show.Change(s.Realised)}</td><td>adds up to the cent</td></tr>"),
         ]);
 
-    /// <summary>The funnel in numbers, with the sentence of every test.</summary>
-    public static Html Funnel(IReadOnlyList<FunnelRow> funnel)
-    {
-        IReadOnlyList<FunnelStep> pairs = FunnelStep.Of(funnel.Where(f => f.Kind is null));
-        IReadOnlyList<FunnelStep> candidates = FunnelStep.Of(funnel.Where(f => f.Kind is not null));
-        return Html.Of(
-            $"""
-            {Steps("Tests of pairs of a call and a put", pairs)}
-            {Steps("Tests of candidates, all kinds", candidates)}
-            """);
-    }
+    /// <summary>The tests of pairs in numbers, with their sentences.</summary>
+    public static Html PairTests(IReadOnlyList<FunnelRow> funnel) => Steps("Tests of pairs of a call and a put", FunnelStep.Of(funnel.Where(f => f.Kind is null)));
+
+    /// <summary>The tests of candidates in numbers, with their sentences.</summary>
+    public static Html CandidateTests(IReadOnlyList<FunnelRow> funnel) => Steps("Tests of candidates, all kinds", FunnelStep.Of(funnel.Where(f => f.Kind is not null)));
 
     /// <summary>Results by kind, name and month.</summary>
     public static Html Groups(IReadOnlyList<PackageRow> packages) => Html.Of(
@@ -61,7 +58,7 @@ internal static class ResultSections
         return Html.Of(
             $"""
             {TableHtml.Of("Events by kind", ["event", "#count", "meaning"], counts)}
-            {TableHtml.Of("Events but expiries, as they happened", ["date", "event", "#package", "name", "#quantity", "#amount", "detail"], told.Take(MostEvents).Select(EventRows.WithPackage), sorts: true)}
+            {TableHtml.Of("Events but expiries, as they happened", ["date", "event", "#package", "name", "#quantity", "#amount", "detail"], told.Take(MostEvents).Select(EventRows.WithPackage), sorts: true, tall: true)}
             {rest}
             """);
     }

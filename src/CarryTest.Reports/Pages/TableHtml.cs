@@ -8,9 +8,10 @@ internal static class TableHtml
     /// <param name="heads">column heads; one that begins with # holds numbers</param>
     /// <param name="rows">complete rows</param>
     /// <param name="sorts">whether the script may sort and filter it</param>
-    public static Html Of(string caption, IReadOnlyList<string> heads, IEnumerable<Html> rows, bool sorts = false) => Html.Of(
+    /// <param name="tall">whether it scrolls within its box where it is long</param>
+    public static Html Of(string caption, IReadOnlyList<string> heads, IEnumerable<Html> rows, bool sorts = false, bool tall = false) => Html.Of(
         $"""
-        <div class="box" tabindex="0" role="region" aria-label="{caption}"><table{(sorts ? Html.Raw(" class=\"sorts\"") : Html.None)}><caption>{caption}</caption>
+        <div class="box{(tall ? " tall" : "")}" tabindex="0" role="region" aria-label="{caption}"><table{(sorts ? Html.Raw(" class=\"sorts\"") : Html.None)}><caption>{caption}</caption>
         <thead><tr>{heads.Select(Head)}</tr></thead>
         <tbody>{rows}</tbody></table></div>
 

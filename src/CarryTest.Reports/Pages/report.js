@@ -81,7 +81,9 @@
       opened.className = "opened";
       const cell = opened.insertCell();
       cell.colSpan = row.cells.length;
-      cell.append(...[...life.childNodes].map((node) => node.cloneNode(true)));
+      const inside = life.cloneNode(true);
+      inside.removeAttribute("id");
+      cell.append(inside);
       row.after(opened);
       link.setAttribute("aria-expanded", "true");
     });
@@ -124,7 +126,7 @@
 
     const read = (index, quiet) => {
       slider.value = String(index);
-      const values = curves.names.map((name, i) => `${name} ${curves.values[i][index].toLocaleString("en-US", { minimumFractionDigits: 0, maximumFractionDigits: 2 }).replace("-", "\u2212")}`);
+      const values = curves.names.map((name, i) => `${name} ${curves.values[i][index].toLocaleString("en-US", { minimumFractionDigits: Number.isInteger(curves.values[i][index]) ? 0 : 2, maximumFractionDigits: 2 }).replace("-", "\u2212")}`);
       output.textContent = `${curves.days[index]}: ${values.join(", ")}`;
       slider.setAttribute("aria-valuetext", output.textContent);
       for (const p of panels) {

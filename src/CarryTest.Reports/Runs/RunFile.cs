@@ -1,7 +1,6 @@
 using System.Globalization;
 using System.Text.Encodings.Web;
 using System.Text.Json;
-using System.Text.Unicode;
 using CarryTest.Market.Money;
 using CarryTest.Market.Words;
 using CarryTest.Reports.Tables;
@@ -11,7 +10,7 @@ namespace CarryTest.Reports.Runs;
 /// <summary>Writes run.json: everything that is needed to make the run again, and its headline figures.</summary>
 internal static class RunFile
 {
-    private static readonly JsonWriterOptions Options = new() { Indented = true, NewLine = "\n", Encoder = JavaScriptEncoder.Create(UnicodeRanges.All) };
+    private static readonly JsonWriterOptions Options = new() { Indented = true, NewLine = "\n", Encoder = JavaScriptEncoder.UnsafeRelaxedJsonEscaping };
 
     /// <summary>Writes the file.</summary>
     public static void Write(string path, RunFacts facts, RunSummary summary)

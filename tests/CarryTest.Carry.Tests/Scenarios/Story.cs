@@ -1,7 +1,6 @@
 using System.Collections.Immutable;
 using CarryTest.Carry.Attribution;
 using CarryTest.Carry.Day;
-using CarryTest.Carry.Journal;
 using CarryTest.Carry.Positions;
 using CarryTest.Carry.Rules;
 using CarryTest.Market.Calendars;
@@ -151,7 +150,7 @@ internal sealed class Story
                 Dividends = expected is null ? ExpectedDividends.Of(knowledge, Underlying, Rules.Dividends with { Forecast = DividendForecastKind.None }, dates.Expiry) : [.. expected],
                 Believed = believed,
                 Benchmark = BelievedFunding.Benchmark(knowledge),
-                Fees = TestFees,
+                Fees = Rules.Costs.Schedule,
                 BorrowFee = borrowFee,
                 BorrowBase = 1,
                 Withholding = 0,
